@@ -196,7 +196,7 @@ func root(moves []move, perYear float64) float64 {
 			if math.IsInf(high, 1) {
 				x = low + low + 1/perYear
 			} else {
-				x = low + (high-low)/2
+				x = (low + high) / 2
 			}
 		}
 	}

@@ -3,20 +3,24 @@ package loan
 import (
 	"errors"
 	"math"
+	"math/big"
 	"testing"
 	"time"
+
+	"pgregory.net/rapid"
 )
 
 func day(year, month, d int) time.Time {
 	return time.Date(year, time.Month(month), d, 0, 0, 0, 0, time.UTC)
 }
 
-// near checks a share against a published percentage, to all its digits.
+// near checks a share against a published percentage. The published digits are
+// themselves up to 1.3e-12 off (found with 60-digit arithmetic).
 func near(t *testing.T, what string, got float64, err error, percent float64) {
 	t.Helper()
 	if err != nil {
 		t.Errorf("%s: %v", what, err)
-	} else if math.Abs(got*100-percent) > 1e-12 {
+	} else if math.Abs(got*100-percent) > 2e-12 {
 		t.Errorf("%s: %.15g %%, want %.15g", what, got*100, percent)
 	}
 }
@@ -177,10 +181,15 @@ func TestYearlyCostOfManyTurns(t *testing.T) {
 	}{
 		// 100 - 120v + 20v² is 0 at v = 1 and v = 5.
 		{[]int64{100, -120, 20}, 0},
-		// 100 - 135v + 30v² - 5v² … only one turn of the sums: v = 0.9 solves
-		// 90 - 140v + 44.444…v² scaled to whole numbers, the other v is 2.25.
+		// 810 - 1260v + 400v² is 0 at v = 0.9 and v = 2.25.
 		{[]int64{810, -1260, 400}, 100.0 / 9},
-		{[]int64{100, -50, 20, -70}, 0},
+		// 380 - 900v + 495v² is 0 at v = 2/3 and v = 38/33, and falls at first.
+		{[]int64{380, -900, 495}, 50},
+		// 300 - 500v - 700v² + 600v³ is 0 at v = (√13 - 1)/6 and v = 3/2.
+		{[]int64{300, -500, -700, 600}, 50 * (math.Sqrt(13) - 1)},
+		// The sums turn, but the sums of sums do not: 100 - 50v - 60v² + 10v³ is
+		// 0 at v = 1 and beyond.
+		{[]int64{100, -50, -60, 10}, 0},
 		{[]int64{100, -100}, 0},
 	} {
 		cost, err := YearlyCostByPeriods(c.flows, 1)
@@ -188,7 +197,7 @@ func TestYearlyCostOfManyTurns(t *testing.T) {
 	}
 }
 
-// Against 60-digit bisection (mpmath), computed for this test.
+// Arithmetic: 2/1 - 1, 2^12 - 1 and so on.
 func TestYearlyCostFarOut(t *testing.T) {
 	for _, c := range []struct {
 		flows   []int64
@@ -205,4 +214,69 @@ func TestYearlyCostFarOut(t *testing.T) {
 			t.Errorf("%v: %v %v, want %v", c.flows, got, err, c.want)
 		}
 	}
+}
+
+// byPeriod is what the borrower of a schedule receives and pays each period.
+func byPeriod(s Schedule) []int64 {
+	last := s.Rows[len(s.Rows)-1].Period
+	amounts := make([]int64, last+1)
+	amounts[0] = s.CashInHand
+	for _, r := range s.Rows {
+		amounts[r.Period] = -r.Payment
+	}
+	amounts[last] += s.Savings
+	return amounts
+}
+
+// worthSign is the sign of the equation at a rate for one period, in 400-bit
+// arithmetic.
+func worthSign(amounts []int64, rate float64) int {
+	wide := func() *big.Float { return new(big.Float).SetPrec(400) }
+	growth := wide().Add(wide().SetInt64(1), wide().SetFloat64(rate))
+	sum := wide()
+	for _, amount := range amounts {
+		sum.Add(sum.Mul(sum, growth), wide().SetInt64(amount))
+	}
+	return sum.Sign()
+}
+
+// checkCost puts the cost back into the equation: a little below it the flows
+// must be worth less than 0, a little above it more.
+func checkCost(t *rapid.T, amounts []int64) {
+	cost, err := YearlyCostByPeriods(amounts, 1)
+	if err != nil {
+		t.Fatalf("%v: %v", amounts, err)
+	}
+	off := 1e-12 * (1 + cost)
+	below, above := worthSign(amounts, cost-off), worthSign(amounts, cost+off)
+	if above != 1 || (cost > 0 && below != -1) {
+		t.Fatalf("%v: cost %v, worth %d below and %d above it", amounts, cost, below, above)
+	}
+}
+
+// Whatever the flows: a cost solves the equation and is the only one that is
+// not below 0; when it is BelowZero nothing solves it.
+func TestYearlyCostOfAnyFlows(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		amounts := rapid.SliceOfN(rapid.Int64Range(-1000, 1000), 0, 12).Draw(t, "amounts")
+		amounts = append([]int64{rapid.Int64Range(1, 3000).Draw(t, "first")}, amounts...)
+		cost, err := YearlyCostByPeriods(amounts, 1)
+		if errors.Is(err, Problem{Code: OneWay}) || errors.Is(err, Problem{Code: NotSingle}) {
+			return
+		}
+		if err == nil {
+			checkCost(t, amounts)
+		} else if !errors.Is(err, Problem{Code: BelowZero}) {
+			t.Fatal(err)
+		}
+		for x := 1e-6; x < 1e6; x *= 1.1 {
+			want := 1
+			if err == nil && x < cost {
+				want = -1
+			}
+			if math.Abs(x-cost) > 1e-9 && worthSign(amounts, x) != want {
+				t.Fatalf("%v: cost %v %v, but worth %d at %v", amounts, cost, err, -want, x)
+			}
+		}
+	})
 }

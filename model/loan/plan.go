@@ -1,9 +1,6 @@
 package loan
 
-import (
-	"math/big"
-	"math/bits"
-)
+import "math/big"
 
 // A Plan answers for one product's terms. It never changes and may be used
 // from several goroutines at once.
@@ -54,12 +51,12 @@ func Compile(t Terms, longest int) (*Plan, error) {
 func levels(n, d uint64, longest int, up bool) []fraction {
 	a, den := new(big.Int).SetUint64(d+n), new(big.Int).SetUint64(d)
 	level := make([]fraction, longest+1)
-	power, denPower, sum, whole := big.NewInt(1), big.NewInt(1), new(big.Int), new(big.Int)
+	power, denPower, sum, bottom := big.NewInt(1), big.NewInt(1), new(big.Int), new(big.Int)
 	for m := 1; m <= longest; m++ {
 		sum.Add(sum.Mul(sum, a), denPower)
 		power.Mul(power, a)
 		denPower.Mul(denPower, den)
-		below, above := neighbours(power, whole.Mul(sum, den), 2*uint64(LargestAmount))
+		below, above := neighbours(power, bottom.Mul(sum, den), 2*uint64(LargestAmount))
 		level[m] = below
 		if up {
 			level[m] = above
@@ -71,9 +68,9 @@ func levels(n, d uint64, longest int, up bool) []fraction {
 // Payment is the ordinary payment, in minor units, of an amount over term
 // periods of which the first grace ask interest only: for equal payments the
 // one after grace, for interest then principal the interest of one period, all
-// at the end the only one. In a schedule without a payment step it is met to
-// the minor unit by every such payment but the last. It is false where
-// Schedule has a Problem.
+// at the end the only one. It is exact: in a schedule of equal payments all
+// after grace but the last are just this. It is false where Schedule has a
+// Problem.
 func (p *Plan) Payment(amount int64, term, grace int) (int64, bool) {
 	if p.check(amount, term, grace) != (Problem{}) {
 		return 0, false
@@ -82,51 +79,45 @@ func (p *Plan) Payment(amount int64, term, grace int) (int64, bool) {
 }
 
 func (p *Plan) payment(amount int64, term, grace int) int64 {
-	if p.terms.Repayment == AllAtTheEnd {
-		return amount + p.interest(amount, term)
+	total := p.interest(amount, term)
+	if p.terms.Repayment == AllAtTheEnd || term == 1 {
+		return amount + total
 	}
 	first := p.interest(amount, 1)
 	if p.terms.Method == Flat {
-		first = share(p.interest(amount, term), 1, uint64(term))
+		first = share(total, 1, uint64(term))
 	}
-	if p.terms.Repayment == InterestThenPrincipal {
-		if term == 1 {
-			return amount + first
+	payment := first
+	if p.terms.Repayment == EqualPayments {
+		if p.terms.Method == Flat {
+			payment = p.flat(amount, total, int64(term), int64(term-grace))
+		} else {
+			payment = p.annuity(amount, p.level[term-grace])
 		}
-		return min(p.roundUp(first), amount+first)
 	}
-	if p.terms.Method == Flat {
-		return min(p.flat(amount, p.interest(amount, term), term, grace), amount+first)
-	}
-	f := p.level[term-grace]
-	whole := amount * int64(f.whole)
-	if p.terms.PaymentStep > 1 {
-		quo, rem := mulDiv(uint64(amount), f.num, f.den)
-		if rem > 0 {
-			quo++
-		}
-		whole = p.roundUp(whole + int64(quo))
-	} else {
-		quo, _ := mulDiv(2*uint64(amount), f.num, f.den)
-		whole += int64(quo+1) / 2
-	}
-	return min(whole, amount+first)
+	return min(p.roundUp(payment), amount+first)
 }
 
-// flat is amount ÷ (term - grace) + interest ÷ term, rounded once.
-func (p *Plan) flat(amount, interest int64, term, grace int) int64 {
-	n, m := uint64(term), uint64(term-grace)
-	hi, lo := bits.Mul64(uint64(amount), n)
-	hi2, lo2 := bits.Mul64(uint64(interest), m)
-	lo, carry := bits.Add64(lo, lo2, 0)
-	quo, rem := bits.Div64(hi+hi2+carry, lo, n*m)
-	if p.terms.PaymentStep <= 1 {
-		return int64(quo) + half(rem, n*m)
+// annuity is amount × level, rounded half up, or up if there is a step.
+func (p *Plan) annuity(amount int64, level fraction) int64 {
+	whole := amount * int64(level.whole)
+	if p.terms.PaymentStep > 1 {
+		quo, rem := mulDiv(uint64(amount), level.num, level.den)
+		return whole + int64(quo+min(rem, 1))
 	}
-	if rem > 0 {
-		quo++
+	quo, _ := mulDiv(2*uint64(amount), level.num, level.den)
+	return whole + int64(quo+1)/2
+}
+
+// flat is amount ÷ m + interest ÷ n, rounded as annuity is.
+func (p *Plan) flat(amount, interest, n, m int64) int64 {
+	rest := amount%m*n + interest%n*m
+	whole := amount/m + interest/n + rest/(n*m)
+	rest %= n * m
+	if p.terms.PaymentStep > 1 {
+		return whole + min(rest, 1)
 	}
-	return p.roundUp(int64(quo))
+	return whole + half(uint64(rest), uint64(n*m))
 }
 
 // interest is the rate on principal for so many periods, rounded half up.
