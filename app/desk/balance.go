@@ -300,7 +300,7 @@ func (r *balanceRenderer) ticks(a axis) {
 		}
 		last = x
 		r.line(x, a.bottom, x, a.bottom+4, 1, colorQuiet)
-		r.print(r.b.reader.Percent(pd), x, a.bottom+4, 60, 0.5, colorQuiet, fyne.TextStyle{})
+		r.print(r.b.reader.Rate(model.Rate(pd)), x, a.bottom+4, 60, 0.5, colorQuiet, fyne.TextStyle{})
 	}
 	r.print(r.b.reader.T("balance.axis"), 4, a.bottom+4, a.left-30, 0, colorQuiet, fyne.TextStyle{})
 	x := a.x(r.b.centre)

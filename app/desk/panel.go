@@ -1,0 +1,175 @@
+package desk
+
+import (
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+
+	"weighhouse/app/words"
+	"weighhouse/model"
+)
+
+// A panel stands beside the questions and always shows how far they are
+// answered, what is recommended and how firmly, who may decide, the payment
+// against what is left, the rules that fired, and the caution.
+type panel struct {
+	reader  *words.Reader
+	labels  *words.Labels
+	edition *model.Edition
+
+	answered *canvas.Text
+	mark     *mark
+	verdict  *canvas.Text
+	firmness *canvas.Text
+	odds     *widget.Label // PD in words, or its bounds
+	figures  *canvas.Text  // PD, score, band
+	decider  *widget.Label
+	payment  *widget.Label
+	rules    *widget.Label
+	object   fyne.CanvasObject
+}
+
+func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition) *panel {
+	p := &panel{reader: reader, labels: labels, edition: e,
+		answered: figure(theme.TextSize(), false), mark: newMark(44), verdict: figure(theme.TextHeadingSize(), true),
+		firmness: figure(theme.CaptionTextSize(), false), odds: paragraph(""), figures: figure(theme.TextSize(), false),
+		decider: paragraph(""), payment: paragraph(""), rules: paragraph("")}
+	p.rules.Importance = widget.WarningImportance
+	top := container.NewBorder(nil, nil, p.mark, nil, container.NewVBox(p.verdict, p.firmness))
+	caution := paragraph(reader.T("desk.caution"))
+	caution.SizeName = theme.SizeNameCaptionText
+	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.odds, inset(p.figures),
+		widget.NewSeparator(), p.payment, p.decider, p.rules)
+	ground := canvas.NewRectangle(shade(colorRaised))
+	p.object = container.NewStack(ground, container.NewBorder(nil,
+		container.NewVBox(widget.NewSeparator(), caution), nil, nil, container.NewVScroll(body)))
+	return p
+}
+
+// show brings every figure up to date.
+func (p *panel) show(iv *interview) {
+	answered, all := iv.asked()
+	setFigure(p.answered, p.reader.T("desk.answered", "answered", answered, "n", all), colorQuiet)
+	r, settled := iv.recommendation()
+	p.mark.show(r)
+	switch {
+	case settled:
+		setFigure(p.verdict, capital(p.reader.Name(r)), shadeOf(r))
+	case iv.complete:
+		setFigure(p.verdict, p.reader.T("desk.ready"), theme.ColorNameForeground)
+	default:
+		setFigure(p.verdict, p.reader.T("desk.open"), colorQuiet)
+	}
+	setFigure(p.firmness, p.firm(iv, settled), colorQuiet)
+	setParagraph(p.odds, p.oddsWords(iv))
+	setFigure(p.figures, p.figureWords(iv), theme.ColorNameForeground)
+	setParagraph(p.decider, p.deciderWords(iv))
+	setParagraph(p.payment, p.paymentWords(iv))
+	setParagraph(p.rules, p.ruleWords(iv))
+}
+
+// firm tells how firmly the recommendation stands.
+func (p *panel) firm(iv *interview, settled bool) string {
+	switch {
+	case iv.refused():
+		return p.reader.T("desk.mend_first")
+	case iv.complete && !iv.shows():
+		return p.reader.T("desk.hand_in")
+	case iv.complete:
+		return p.reader.T("desk.complete")
+	case settled:
+		return p.reader.T("desk.settled")
+	case !iv.shows():
+		return p.reader.T("desk.shown_later")
+	case iv.bounds.Narrows >= 0:
+		item := &p.edition.Items()[iv.bounds.Narrows]
+		return p.reader.T("desk.narrows", "number", item.Number)
+	}
+	return ""
+}
+
+func (p *panel) oddsWords(iv *interview) string {
+	card := p.edition.Scorecard().Card
+	switch {
+	case !iv.shows():
+		return ""
+	case iv.complete:
+		return capital(p.reader.PDPlain(iv.result.PD, int(card.DefaultDaysLate), int(card.WithinMonths))) + "."
+	}
+	return p.reader.T("desk.between", "low", iv.bounds.LowestPD, "high", iv.bounds.HighestPD)
+}
+
+func (p *panel) figureWords(iv *interview) string {
+	if !iv.complete || !iv.shows() {
+		return ""
+	}
+	band, _ := p.labels.Band(iv.result.Band)
+	return p.reader.T("desk.figures", "pd", p.reader.Percent(iv.result.PD), "score", p.reader.Score(iv.result.Score), "band", band)
+}
+
+func (p *panel) deciderWords(iv *interview) string {
+	amount, _, ok := iv.answers.AmountAndTerm()
+	if !iv.complete || !iv.shows() || !ok {
+		return ""
+	}
+	text := p.reader.T("desk.decides." + string(p.edition.Decider(iv.result, amount)))
+	if cap := iv.result.LargestAmount; cap.Set && cap.Value < amount {
+		terms := p.edition.Scorecard().Terms
+		text += " " + p.reader.T("desk.largest", "amount", p.reader.Money(cap.Value, int(terms.MoneyDecimals), terms.Currency))
+	}
+	if _, caution := p.labels.Band(iv.result.Band); caution != "" {
+		text += "\n" + caution
+	}
+	return text
+}
+
+// paymentWords sets the payment against what is left each month, where the
+// edition works both out and they are known.
+func (p *panel) paymentWords(iv *interview) string {
+	share, payment, left, ok := p.edition.PaymentShare()
+	if !ok || !iv.worked[payment].Known() || iv.worked[payment].State != model.Given {
+		return ""
+	}
+	terms := p.edition.Scorecard().Terms
+	money := func(i int) string {
+		return p.reader.Money(iv.worked[i].Low, int(terms.MoneyDecimals), terms.Currency)
+	}
+	if !iv.worked[left].Known() || iv.worked[left].State != model.Given {
+		return p.reader.T("desk.payment", "payment", money(payment))
+	}
+	if iv.worked[share].State == model.IsNothingLeft {
+		return p.reader.T("desk.payment_nothing_left", "payment", money(payment), "left", money(left))
+	}
+	percent := p.reader.Rate(model.Rate(iv.worked[share].Low * 1000))
+	return p.reader.T("desk.payment_left", "payment", money(payment), "left", money(left), "share", percent)
+}
+
+// ruleWords are the rules that fired, each on a line with what it does.
+func (p *panel) ruleWords(iv *interview) string {
+	if !iv.shows() && iv.edition.Scorecard().Card.ResultShown != model.WhenComplete {
+		return ""
+	}
+	var lines []string
+	for _, r := range iv.fires() {
+		label, text := p.labels.Rule(r)
+		if text != "" {
+			label += ". " + text
+		}
+		lines = append(lines, p.reader.T("desk.rule."+strings.ReplaceAll(string(r.Effect), " ", "_"), "rule", label))
+	}
+	return strings.Join(lines, "\n")
+}
+
+// capital is a text with its first letter made large.
+func capital(text string) string {
+	for i, r := range text {
+		if i == 0 {
+			return strings.ToUpper(string(r)) + text[len(string(r)):]
+		}
+	}
+	return text
+}
