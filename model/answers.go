@@ -24,9 +24,11 @@ type Answer struct {
 	// Number is a number's value, or a worksheet's single monthly figure.
 	Number Number
 	Date   Date
-	// Lines are a worksheet's; nil where one monthly figure was given.
+	// Lines are a worksheet's, by place among Item.Lines; nil where one monthly
+	// figure was given. They must not be changed once put.
 	Lines []Money
-	// Seen tells that a paper was seen; otherwise the answer was told.
+	// Seen tells that a paper was seen; otherwise the answer was told. Only
+	// what is Given can have been seen.
 	Seen bool
 }
 
@@ -46,11 +48,13 @@ type Answers struct {
 	Client  ClientKind
 	edition *Edition
 	given   []Answer // by Item.Index
+	values  []value  // what each of given comes to
 }
 
 // NewAnswers are answers with nothing entered yet.
 func (e *Edition) NewAnswers(on Date, client ClientKind) *Answers {
-	return &Answers{On: on, Client: client, edition: e, given: make([]Answer, len(e.items))}
+	return &Answers{On: on, Client: client, edition: e,
+		given: make([]Answer, len(e.items)), values: make([]value, len(e.items))}
 }
 
 // Edition is the edition that asks.
@@ -59,14 +63,18 @@ func (a *Answers) Edition() *Edition { return a.edition }
 // At is the answer to the item of that index.
 func (a *Answers) At(index int) Answer { return a.given[index] }
 
-// Put enters an answer. What it holds is the caller's to have read with
-// Edition.ParseAnswer; limits are told by Edition.Question.
-// A worksheet without any line is not answered.
+// Put enters an answer to an item that is asked. What it holds must fit the
+// item, as all that ParseAnswer gives does; whether it is acceptable is told
+// by Edition.CheckAnswer. A worksheet without any line is not answered.
 func (a *Answers) Put(index int, answer Answer) {
-	if answer.Lines != nil && !slices.ContainsFunc(answer.Lines, func(m Money) bool { return m.Set }) {
+	switch {
+	case answer.State != Given:
+		answer = Answer{State: answer.State}
+	case answer.Lines != nil && !slices.ContainsFunc(answer.Lines, func(m Money) bool { return m.Set }):
 		answer = Answer{}
 	}
 	a.given[index] = answer
+	a.values[index] = a.edition.items[index].valueOf(&answer)
 }
 
 // Applies tells whether a question is asked of this applicant: a conditional
@@ -76,13 +84,13 @@ func (a *Answers) Applies(index int) Truth {
 	if c == nil {
 		return Sure
 	}
-	source := a.given[c.index]
+	source := &a.values[c.index]
 	switch earlier := a.Applies(c.index); {
 	case earlier == Not:
 		return Not
-	case source.State == Missing || source.State == IsNotApplicable:
+	case source.state == Missing || source.state == IsNotApplicable:
 		return Perhaps
-	case source.State == Given && c.among&(1<<source.Attribute) != 0:
+	case source.state == Given && c.among>>uint8(source.attr)&1 != 0:
 		return earlier
 	}
 	return Not
@@ -91,26 +99,23 @@ func (a *Answers) Applies(index int) Truth {
 // Clone is a copy that shares nothing that may be changed.
 func (a *Answers) Clone() *Answers {
 	b := *a
-	b.given = append([]Answer(nil), a.given...)
+	b.given, b.values = slices.Clone(a.given), slices.Clone(a.values)
 	return &b
 }
 
 // Text is the canonical text that is kept and hashed: the day, the kind of
 // client, then a line a characteristic in the edition's order with its code,
-// its answer and, where a paper was seen, "seen". Missing answers have no
-// line; what is not asked of this applicant is not_applicable, whatever was
-// entered before that was known.
+// its answer and, where a paper was seen, "seen", parted by tabs. Missing
+// answers have no line; what is not asked of this applicant is
+// not_applicable, whatever was entered before that was known.
 func (a *Answers) Text() string {
 	var b strings.Builder
 	b.WriteString("on\t" + a.On.String() + "\nclient\t" + string(a.Client) + "\n")
-	for i, answer := range a.given {
-		switch applies := a.Applies(i); {
-		case applies == Not:
+	for _, i := range a.edition.asked {
+		answer := a.given[i]
+		if a.Applies(i) == Not {
 			answer = Answer{State: IsNotApplicable}
-		case answer.State == IsNotApplicable:
-			continue
-		}
-		if answer.State == Missing {
+		} else if answer.State == Missing || answer.State == IsNotApplicable {
 			continue
 		}
 		b.WriteString(a.edition.items[i].Code + "\t" + a.edition.AnswerText(i, answer))
@@ -122,35 +127,65 @@ func (a *Answers) Text() string {
 	return b.String()
 }
 
-// ParseAnswers reads what Text wrote and lists what does not read.
+// ParseAnswers reads what Text wrote, in any order, and lists what does not
+// read; what is listed is missing.
 func (e *Edition) ParseAnswers(text string) (*Answers, []Problem) {
 	a := e.NewAnswers(Date{}, "")
 	var problems []Problem
-	for line := range strings.Lines(text) {
-		cells := strings.Split(strings.TrimSuffix(line, "\n"), "\t")
-		code, value := cells[0], textAt(cells, 1)
+	bad := func(code string, p Problem) {
+		p.Place = answerPlace(code)
+		problems = append(problems, p)
+	}
+	client, dated := "", false
+	for text != "" {
+		var line string
+		line, text, _ = strings.Cut(text, "\n")
+		code, value, _ := strings.Cut(line, "\t")
+		value, seen, evidence := strings.Cut(value, "\t")
+		if evidence && seen != "seen" {
+			bad(code, Problem{Code: "not_canonical"})
+			continue
+		}
 		var err error
 		switch code {
 		case "on":
-			a.On, err = ParseDate(value)
-		case "client":
-			a.Client = ClientKind(value)
-		default:
-			i, ok := e.byCode[code]
-			if !ok || e.items[i].Kind == Computed {
-				problems = append(problems, Problem{Code: "unknown_characteristic", Place: answerPlace(code), Args: Args{"value": code}})
-				continue
+			dated = true
+			if a.On, err = ParseDate(value); a.On.YearAlone() {
+				a.On, err = Date{}, Problem{Code: "date_needs_day", Args: Args{"value": value}}
 			}
-			a.given[i], err = e.ParseAnswer(i, value)
-			a.given[i].Seen = textAt(cells, 2) == "seen"
+		case "client":
+			client = value
+		default:
+			err = a.read(code, value, evidence)
 		}
 		if err != nil {
-			p := err.(Problem)
-			p.Place = answerPlace(code)
-			problems = append(problems, p)
+			bad(code, err.(Problem))
 		}
 	}
+	if !dated {
+		bad("on", Problem{Code: "missing_value"})
+	}
+	if a.Client = ClientKind(client); a.Client != NewClients && a.Client != RepeatClients {
+		bad("client", Problem{Code: "not_in_list", Args: Args{"value": client, "options": "new, repeat"}})
+	}
 	return a, problems
+}
+
+// read enters the answer of one line of text.
+func (a *Answers) read(code, text string, seen bool) error {
+	i, ok := a.edition.byCode[code]
+	if !ok || a.edition.items[i].Kind == Computed {
+		return Problem{Code: "unknown_characteristic", Args: Args{"value": code, "near": ""}}
+	}
+	if a.given[i].State != Missing {
+		return Problem{Code: "repeated_code", Args: Args{"value": code}}
+	}
+	answer, err := a.edition.ParseAnswer(i, text)
+	answer.Seen = seen
+	if err == nil {
+		a.Put(i, answer)
+	}
+	return err
 }
 
 func answerPlace(code string) Place { return Place{Sheet: "Answers", Column: code} }
@@ -179,24 +214,6 @@ func (e *Edition) AnswerText(index int, a Answer) string {
 	return a.Number.String()
 }
 
-// linesText is "code:amount/period" for each line given, parted by spaces.
-func (item *Item) linesText(lines []Money) string {
-	var parts []string
-	for i, m := range lines {
-		if m.Set {
-			parts = append(parts, item.Lines[i].Code+":"+m.Amount.String()+"/"+string(item.period(i, m)))
-		}
-	}
-	return strings.Join(parts, " ")
-}
-
-func (item *Item) period(line int, m Money) Period {
-	if m.Period == "" {
-		return item.Lines[line].Period
-	}
-	return m.Period
-}
-
 // ParseAnswer reads one answer from canonical text; empty is Missing. Errors
 // are Problems.
 func (e *Edition) ParseAnswer(index int, text string) (Answer, error) {
@@ -217,17 +234,13 @@ func (e *Edition) ParseAnswer(index int, text string) (Answer, error) {
 	}
 	a := Answer{State: Given}
 	var err error
-	switch item.Kind {
-	case Choice, YesNo:
+	switch {
+	case item.isChoice():
 		a.Attribute, err = item.attribute(text)
-	case DateKind:
+	case item.Kind == DateKind:
 		a.Date, err = ParseDate(text)
-	case Worksheet:
-		if strings.Contains(text, ":") {
-			a.Lines, err = item.parseLines(text)
-			break
-		}
-		fallthrough
+	case item.Kind == Worksheet && strings.Contains(text, ":"):
+		a.Lines, err = item.parseLines(text)
 	default:
 		if a.Number, err = ParseNumber(text); err == nil && a.Number != a.Number.Round(int(item.Decimals)) {
 			err = Problem{Code: "too_many_decimals", Args: Args{"value": text, "most": Whole(int64(item.Decimals)).String()}}
@@ -237,96 +250,4 @@ func (e *Edition) ParseAnswer(index int, text string) (Answer, error) {
 		return Answer{}, err
 	}
 	return a, nil
-}
-
-// attribute finds the place of a choice's code.
-func (item *Item) attribute(code string) (int, error) {
-	for i, a := range item.Attributes {
-		if a.Code == code && !reserved(code) {
-			return i, nil
-		}
-	}
-	return 0, Problem{Code: "unknown_attribute", Args: Args{"value": code, "options": item.options()}}
-}
-
-func (item *Item) options() string {
-	var codes []string
-	for _, a := range item.Attributes {
-		if !reserved(a.Code) && a.Code != "" {
-			codes = append(codes, a.Code)
-		}
-	}
-	return strings.Join(codes, ", ")
-}
-
-func reserved(attribute string) bool {
-	return attribute == Unknown || attribute == NotApplicable || attribute == NothingLeft
-}
-
-func (item *Item) parseLines(text string) ([]Money, error) {
-	lines := make([]Money, len(item.Lines))
-	for _, part := range strings.Fields(text) {
-		code, money, _ := strings.Cut(part, ":")
-		amount, period, _ := strings.Cut(money, "/")
-		i := item.line(code)
-		if i < 0 {
-			return nil, Problem{Code: "unknown_line", Args: Args{"value": code}}
-		}
-		n, err := ParseNumber(amount)
-		if err != nil {
-			return nil, err
-		}
-		if Period(period).TimesAYear() == 0 {
-			return nil, Problem{Code: "not_in_list", Args: Args{"value": period, "options": strings.Join(Month.Options(), ", ")}}
-		}
-		if Period(period) == item.Lines[i].Period {
-			period = ""
-		}
-		lines[i] = Money{n, Period(period), true}
-	}
-	return lines, nil
-}
-
-func (item *Item) line(code string) int {
-	for i, l := range item.Lines {
-		if l.Code == code {
-			return i
-		}
-	}
-	return -1
-}
-
-// Monthly is what a worksheet's lines come to in a month: each amount times
-// its period's times a year, summed with their signs and divided once by 12,
-// rounded half up to the item's decimals. A line left blank counts nothing.
-func (item *Item) Monthly(lines []Money) Number {
-	// In whole units and millionths apart, nothing overflows: 365 × 10^12 a line.
-	var units, parts int64
-	for i, m := range lines {
-		if !m.Set {
-			continue
-		}
-		times := item.period(i, m).TimesAYear()
-		if item.Lines[i].Flow == TakesAway {
-			times = -times
-		}
-		units += int64(m.Amount/One) * times
-		parts += int64(m.Amount%One) * times
-	}
-	units, parts = units+parts/int64(One), parts%int64(One)
-	// The year's sum over 12, kept with its remainder so that it rounds once.
-	step := pow10[MostDecimals-int(item.Decimals)]
-	whole := units / 12
-	rest := (units%12)*int64(One) + parts // in millionths, |rest| < 13 million
-	d := 12 * step
-	q := floorDiv(2*rest+d, 2*d)
-	return Whole(whole).Plus(Number(q * step))
-}
-
-func floorDiv(a, b int64) int64 {
-	q := a / b
-	if a%b < 0 {
-		q--
-	}
-	return q
 }

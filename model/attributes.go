@@ -31,31 +31,33 @@ func (c *compiler) attributes() {
 	}
 }
 
-// attribute checks what every attribute row must say and adds it to the item.
-func (c *compiler) attribute(item *Item, r int) {
+// attribute checks what every attribute row must say and adds it to the item;
+// false where it has no room.
+func (c *compiler) attribute(item *Item, r int) bool {
 	a := c.s.Attributes[r]
 	bad := func(column, code string, args Args) {
 		c.add(Problem{Code: code, Place: at("Attributes", r+1, column), Args: args})
 	}
 	if slices.ContainsFunc(item.Attributes, func(b Attribute) bool { return a.Code == b.Code }) {
 		bad("Attribute", "repeated_code", Args{"value": a.Code})
-		return
+		return false
 	}
 	if len(item.Attributes) == MostAttributes {
-		bad("Attribute", "too_many", Args{"value": strconv.Itoa(MostAttributes + 1), "most": strconv.Itoa(MostAttributes)})
-		return
+		c.add(tooMany(at("Attributes", r+1, "Attribute"), MostAttributes+1, MostAttributes))
+		return false
 	}
+	name := coefficient(a)
 	if a.Label == "" {
 		bad("Label", "missing_value", nil)
 	}
 	if item.Use == Scored && !a.LogOdds.Set {
-		bad("Log-odds", "log_odds_missing", Args{"value": item.Code + "." + a.Code})
+		bad("Log-odds", "log_odds_missing", Args{"value": name})
 	}
 	if item.Use != Scored && a.LogOdds.Set {
-		bad("Log-odds", "log_odds_not_scored", Args{"value": item.Code + "." + a.Code, "use": string(item.Use)})
+		bad("Log-odds", "log_odds_not_scored", Args{"value": name, "use": string(item.Use)})
 	}
 	if a.Slope.Set {
-		bad("Log-odds per unit", "slope_in_attribute", Args{"value": item.Code + "." + a.Code})
+		bad("Log-odds per unit", "slope_in_attribute", Args{"value": name})
 	}
 	if a.Loans.Set && a.Defaults.Or(0) > a.Loans.Value {
 		bad("Defaults", "more_than", Args{"value": strconv.Itoa(int(a.Defaults.Value)), "most": strconv.Itoa(int(a.Loans.Value))})
@@ -63,8 +65,10 @@ func (c *compiler) attribute(item *Item, r int) {
 	if a.StandardError.Or(Slope{}).Digits < 0 {
 		bad("Standard error", "below_zero", nil)
 	}
-	n := len(item.Attributes)
-	switch a.Code {
+	if (reserved(a.Code) || item.isChoice()) && (a.From.Set || a.Below.Set) {
+		bad("From", "limits_not_wanted", Args{"value": a.Code})
+	}
+	switch n := len(item.Attributes); a.Code {
 	case Unknown:
 		item.unknown = n
 	case NotApplicable:
@@ -72,44 +76,40 @@ func (c *compiler) attribute(item *Item, r int) {
 	case NothingLeft:
 		item.nothingLeft = n
 	}
-	if reserved(a.Code) && (a.From.Set || a.Below.Set) {
-		bad("From", "limits_not_wanted", Args{"value": a.Code})
-	}
 	item.Attributes = append(item.Attributes, a)
 	item.weights = append(item.weights, a.LogOdds.Or(0))
+	return true
 }
 
 func (c *compiler) choices(item *Item, rows []int) {
 	for _, r := range rows {
-		a := c.s.Attributes[r]
-		if a.Code == "" {
-			c.add(Problem{Code: "missing_value", Place: at("Attributes", r+1, "Attribute")})
-			continue
+		code := c.s.Attributes[r].Code
+		place := at("Attributes", r+1, "Attribute")
+		switch {
+		case code == "":
+			c.add(Problem{Code: "missing_value", Place: place})
+		case item.Kind == YesNo && code != Yes && code != No && !reserved(code):
+			c.add(Problem{Code: "unknown_attribute", Place: place, Args: Args{"value": code, "options": "yes, no"}})
+		default:
+			c.attribute(item, r)
 		}
-		if item.Kind == YesNo && a.Code != Yes && a.Code != No && !reserved(a.Code) {
-			c.add(Problem{Code: "unknown_attribute", Place: at("Attributes", r+1, "Attribute"), Args: Args{"value": a.Code, "options": "yes, no"}})
-			continue
-		}
-		if !reserved(a.Code) && (a.From.Set || a.Below.Set) {
-			c.add(Problem{Code: "limits_not_wanted", Place: at("Attributes", r+1, "From"), Args: Args{"value": a.Code}})
-		}
-		c.attribute(item, r)
 	}
-	if item.Kind == YesNo {
-		for _, code := range []string{Yes, No} {
-			if _, err := item.attribute(code); err == nil {
-				continue
-			}
-			if item.Use == Scored {
-				c.add(Problem{Code: "attribute_missing", Place: at("Characteristics", c.row(item), "Kind"), Args: Args{"value": item.Code + "." + code}})
-			}
-			item.Attributes = append(item.Attributes, Attribute{Characteristic: item.Code, Code: code})
-			item.weights = append(item.weights, 0)
+	place := at("Characteristics", c.row(item), "Kind")
+	if item.Kind == Choice {
+		if item.options() == "" {
+			c.add(Problem{Code: "choice_without_attributes", Place: place, Args: Args{"value": item.Code}})
 		}
 		return
 	}
-	if item.options() == "" {
-		c.add(Problem{Code: "choice_without_attributes", Place: at("Characteristics", c.row(item), "Kind"), Args: Args{"value": item.Code}})
+	for _, code := range []string{Yes, No} {
+		if _, err := item.attribute(code); err == nil {
+			continue
+		}
+		if item.Use == Scored {
+			c.add(Problem{Code: "attribute_missing", Place: place, Args: Args{"value": item.Code + "." + code}})
+		}
+		item.Attributes = append(item.Attributes, Attribute{Characteristic: item.Code, Code: code})
+		item.weights = append(item.weights, 0)
 	}
 }
 
@@ -121,36 +121,23 @@ func (c *compiler) numberBands(item *Item, rows []int) {
 	lastRow := 0
 	for _, r := range rows {
 		a := &c.s.Attributes[r]
-		place := func(column string) Place { return at("Attributes", r+1, column) }
 		if a.Code == "" {
 			c.slope(item, *a, r, sloped)
 			sloped = true
 			continue
 		}
-		if !reserved(a.Code) {
-			switch {
-			case a.From.Set && a.Below.Set && a.From.Value >= a.Below.Value:
-				c.add(Problem{Code: "band_empty", Place: place("Below"), Args: Args{"value": a.Below.Value.String(), "expected": a.From.Value.String()}})
-			case last == nil && a.From.Set && a.From.Value > item.from:
-				c.add(Problem{Code: "band_first_from", Place: place("From"), Args: Args{"value": a.From.Value.String()}})
-			case last != nil && !last.Below.Set:
-				c.add(Problem{Code: "band_after_open", Place: place("From"), Args: Args{"value": a.Code, "above": last.Code}})
-			case last != nil && !a.From.Set:
-				c.add(Problem{Code: "band_from_missing", Place: place("From"), Args: Args{"expected": last.Below.Value.String()}})
-			case last != nil && a.From.Value > last.Below.Value:
-				c.add(Problem{Code: "band_gap", Place: place("From"), Args: Args{"value": a.From.Value.String(), "expected": last.Below.Value.String()}})
-			case last != nil && a.From.Value < last.Below.Value:
-				c.add(Problem{Code: "band_overlap", Place: place("From"), Args: Args{"value": a.From.Value.String(), "expected": last.Below.Value.String()}})
-			}
-			floor := Number(math.MinInt64)
-			if last != nil {
-				floor = a.From.Or(floor)
-			}
-			item.floors = append(item.floors, floor)
-			item.at = append(item.at, len(item.Attributes))
-			last, lastRow = a, r+1
+		n := len(item.Attributes)
+		if !c.attribute(item, r) || reserved(a.Code) {
+			continue
 		}
-		c.attribute(item, r)
+		c.follows(item, a, last, r)
+		floor := Number(math.MinInt64)
+		if last != nil {
+			floor = a.From.Or(floor)
+		}
+		item.floors = append(item.floors, floor)
+		item.bandAt = append(item.bandAt, n)
+		last, lastRow = a, r+1
 	}
 	if last != nil && last.Below.Set && last.Below.Value <= item.to {
 		c.add(Problem{Code: "band_last_below", Place: at("Attributes", lastRow, "Below"), Args: Args{"value": last.Below.Value.String()}})
@@ -160,82 +147,106 @@ func (c *compiler) numberBands(item *Item, rows []int) {
 	}
 }
 
+// follows checks that a band starts where the one above it ends. Below the
+// first and above the last, the clamp may take over.
+func (c *compiler) follows(item *Item, a, above *Attribute, r int) {
+	bad := func(column, code string, args Args) {
+		c.add(Problem{Code: code, Place: at("Attributes", r+1, column), Args: args})
+	}
+	if a.From.Set && a.Below.Set && a.From.Value >= a.Below.Value {
+		bad("Below", "band_empty", Args{"value": a.Below.Value.String(), "expected": a.From.Value.String()})
+	}
+	from, end := a.From.Value, Number(0)
+	if above != nil {
+		end = above.Below.Value
+	}
+	switch {
+	case above == nil && a.From.Set && from > item.from:
+		bad("From", "band_first_from", Args{"value": from.String()})
+	case above == nil:
+	case !above.Below.Set:
+		bad("From", "band_after_open", Args{"value": a.Code, "above": above.Code})
+	case !a.From.Set:
+		bad("From", "band_from_missing", Args{"expected": end.String()})
+	case from > end:
+		bad("From", "band_gap", Args{"value": from.String(), "expected": end.String()})
+	case from < end:
+		bad("From", "band_overlap", Args{"value": from.String(), "expected": end.String()})
+	}
+}
+
 // slope reads the row whose attribute is blank.
 func (c *compiler) slope(item *Item, a Attribute, r int, again bool) {
-	bad := func(column, code string) {
-		c.add(Problem{Code: code, Place: at("Attributes", r+1, column), Args: Args{"value": item.Code}})
+	bad := func(column, code string, args Args) {
+		c.add(Problem{Code: code, Place: at("Attributes", r+1, column), Args: args})
 	}
 	switch {
 	case again:
-		bad("Attribute", "slope_repeated")
+		bad("Attribute", "slope_repeated", Args{"value": item.Code})
 	case !a.Slope.Set:
-		bad("Attribute", "missing_value")
+		bad("Attribute", "missing_value", nil)
 	case a.LogOdds.Set || a.From.Set || a.Below.Set:
-		bad("Log-odds", "slope_with_band")
+		bad("Log-odds", "slope_with_band", Args{"value": item.Code})
 	case item.Use != Scored:
-		bad("Log-odds per unit", "log_odds_not_scored")
+		bad("Log-odds per unit", "log_odds_not_scored", Args{"value": item.Code, "use": string(item.Use)})
 	case !item.CountedFrom.Set || !item.CountedTo.Set:
-		bad("Log-odds per unit", "slope_needs_limits")
+		bad("Log-odds per unit", "slope_needs_limits", Args{"value": item.Code})
 	}
 	if a.StandardError.Or(Slope{}).Digits < 0 {
-		bad("Standard error", "below_zero")
+		bad("Standard error", "below_zero", nil)
 	}
-	item.slope = a.Slope.Or(Slope{})
+	item.slope, item.slopeReason = a.Slope.Or(Slope{}), a.Reason
 }
 
 // reservedAttributes demands unknown, not_applicable and nothing_left of a
 // scored item where they can happen, and refuses them where they cannot.
-func (c *compiler) reservedAttributes(item *Item) {
-	can := c.states(item.Index)
-	place := at("Characteristics", c.row(item), "Characteristic")
-	for _, r := range []struct {
-		code  string
-		index int
-		state State
-	}{{Unknown, item.unknown, StatedUnknown}, {NotApplicable, item.notApplies, IsNotApplicable}, {NothingLeft, item.nothingLeft, IsNothingLeft}} {
-		happens := can.has(r.state)
-		switch {
-		case happens && r.index < 0 && item.Use == Scored:
-			c.add(Problem{Code: "attribute_missing", Place: place, Args: Args{"value": item.Code + "." + r.code}})
-		case !happens && r.index >= 0:
-			c.add(Problem{Code: "attribute_never_happens", Place: place, Args: Args{"value": item.Code + "." + r.code}})
+func (c *compiler) reservedAttributes() {
+	c.findStates()
+	for i := range c.e.items {
+		item := &c.e.items[i]
+		for _, r := range reservedStates {
+			happens, given := c.states[i].has(r.state), item.stateAttribute(r.state) >= 0
+			switch {
+			case happens && !given && item.Use == Scored:
+				c.add(Problem{Code: "attribute_missing", Place: at("Characteristics", c.row(item), "Characteristic"), Args: Args{"value": item.Code + "." + r.code}})
+			case !happens && given:
+				c.add(Problem{Code: "attribute_never_happens", Place: c.attributeRow(item, r.code, "Attribute"), Args: Args{"value": item.Code + "." + r.code}})
+			}
 		}
-	}
-	if n := item.nothingLeft; n >= 0 && item.Use == Scored && item.weights[n] < slices.Max(item.weights) {
-		c.warn(Problem{Code: "nothing_left_not_riskiest", Place: place, Args: Args{"value": item.Code}})
+		if n := item.nothingLeft; n >= 0 && item.Use == Scored {
+			if _, most := item.numberRange(-Largest, Largest); item.weights[n] < most {
+				c.warn(Problem{Code: "nothing_left_not_riskiest", Place: c.attributeRow(item, NothingLeft, "Log-odds"), Args: Args{"value": item.Code}})
+			}
+		}
 	}
 }
 
-// states tells which states the answer to an item can come to have.
-func (c *compiler) states(index int) stateSet {
-	item := &c.e.items[index]
-	s := set(Given)
-	if item.Kind != Computed {
-		if item.UnknownAllowed {
-			s |= set(StatedUnknown)
-		}
-		if item.AskedOnlyIf != "" {
-			s |= set(IsNotApplicable)
-		}
-		return s
-	}
-	for _, p := range item.parts {
-		if !slices.Contains(c.e.order, p.index) && c.e.items[p.index].Kind == Computed {
-			continue // part of a circle, listed already
-		}
-		s |= c.states(p.index)
-	}
-	if item.Operation == Sum {
-		s &^= set(IsNotApplicable)
-	}
-	if item.Operation == Ratio {
-		s |= set(IsNothingLeft)
-	}
-	return s
+// attributeRow is the place of a cell in an attribute's row.
+func (c *compiler) attributeRow(item *Item, code, column string) Place {
+	row := slices.IndexFunc(c.s.Attributes, func(a Attribute) bool { return a.Characteristic == item.Code && a.Code == code })
+	return at("Attributes", row+1, column)
 }
 
-// A stateSet is a set of States.
-type stateSet uint8
+// reservedStates are the states that have an attribute of their own.
+var reservedStates = [...]struct {
+	code  string
+	state State
+}{{Unknown, StatedUnknown}, {NotApplicable, IsNotApplicable}, {NothingLeft, IsNothingLeft}}
 
-func set(s State) stateSet            { return 1 << s }
-func (s stateSet) has(one State) bool { return s&set(one) != 0 }
+func reserved(attribute string) bool {
+	return attribute == Unknown || attribute == NotApplicable || attribute == NothingLeft
+}
+
+// options lists what may be picked, for a message.
+func (item *Item) options() string {
+	text := ""
+	for _, a := range item.Attributes {
+		if !reserved(a.Code) {
+			if text != "" {
+				text += ", "
+			}
+			text += a.Code
+		}
+	}
+	return text
+}

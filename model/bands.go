@@ -1,32 +1,28 @@
 package model
 
-import (
-	"slices"
-)
-
 // bands checks that the score bands cover PD 0 to 1 in order and grow no
-// milder, and sorts out who may decide.
+// milder.
 func (c *compiler) bands() {
 	rows := c.s.Bands
 	if len(rows) == 0 {
 		c.add(Problem{Code: "no_bands", Place: at("Bands", 0, "")})
-		return
 	}
-	var codes []string
+	if len(rows) > MostBands {
+		c.add(tooMany(at("Bands", 0, ""), len(rows), MostBands))
+		rows = rows[:MostBands]
+	}
+	seen := map[string]bool{}
 	next := PD(0)
 	for i, b := range rows {
 		bad := func(column, code string, args Args) {
 			c.add(Problem{Code: code, Place: at("Bands", i+1, column), Args: args})
 		}
-		if slices.Contains(codes, b.Code) && b.Code != "" {
-			bad("Band", "repeated_code", Args{"value": b.Code})
-		}
-		codes = append(codes, b.Code)
+		c.onlyOnce(seen, b.Code, at("Bands", i+1, "Band"))
 		from, below := b.From.Or(0), b.Below.Or(PDOne)
 		switch {
 		case i > 0 && !b.From.Set:
 			bad("PD from", "band_from_missing", Args{"expected": next.String()})
-		case from > next && i == 0:
+		case i == 0 && from > 0:
 			bad("PD from", "bands_start", Args{"value": from.String()})
 		case from > next:
 			bad("PD from", "band_gap", Args{"value": from.String(), "expected": next.String()})
@@ -47,7 +43,7 @@ func (c *compiler) bands() {
 		if o, m := b.OfficerLimit, b.ManagerLimit; o.Set && m.Set && o.Value > m.Value {
 			bad("Manager limit", "limits_crossed", Args{"value": m.Value.String(), "expected": o.Value.String()})
 		}
-		c.e.bands = append(c.e.bands, band{from, i})
+		c.e.bands = append(c.e.bands, from)
 		next = below
 	}
 }
@@ -62,9 +58,10 @@ const (
 )
 
 // Decider tells who may decide on a loan of that amount with that result: the
-// officer up to the band's officer limit unless it is to be referred, the
-// manager up to the manager limit, and head office beyond. A limit left blank
-// is none.
+// officer up to the band's officer limit unless the recommendation is to
+// refer, the manager up to the band's manager limit, and head office beyond.
+// A limit left blank is none. The limits are of the band that the score fell
+// in, also where a rule made the recommendation stricter.
 func (e *Edition) Decider(r Result, amount Number) Decider {
 	b := e.card.Bands[r.Band]
 	switch {

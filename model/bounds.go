@@ -28,73 +28,61 @@ func (b Bounds) Settled() bool { return b.Mildest == b.Strictest }
 // Bound says what may still come of answers, complete or not. For complete
 // answers the bounds meet in the result.
 func (e *Edition) Bound(a *Answers) Bounds {
-	b := e.bound(a)
-	b.Narrows = e.narrows(a, b)
-	return b
-}
-
-func (e *Edition) bound(a *Answers) Bounds {
 	var p possibles
 	e.spread(a, &p)
-	b := Bounds{Lowest: e.constant, Highest: e.constant, Narrows: -1}
-	for i := range e.items {
-		item := &e.items[i]
-		if item.Use == Scored {
-			lo, hi := item.weightRange(&p[i])
-			b.Lowest += lo
-			b.Highest += hi
-		}
-		if item.Kind != Computed && p[i].states != set(IsNotApplicable) &&
-			(a.given[i].State == Missing || a.given[i].State == IsNotApplicable) {
-			b.Missing = append(b.Missing, i)
-		}
-	}
+	var b Bounds
+	b.Lowest, b.Highest = e.sumRange(&p)
 	b.LowestPD, b.HighestPD = b.Lowest.PD(), b.Highest.PD()
 	b.FirstBand, b.LastBand = e.band(b.LowestPD), e.band(b.HighestPD)
 	b.Mildest = e.card.Bands[b.FirstBand].Recommendation
 	b.Strictest = e.card.Bands[b.LastBand].Recommendation
 	for i := range e.rules {
 		rule := &e.rules[i]
-		fires := Sure
-		for k := range rule.tests {
-			fires = fires.and(rule.tests[k].may(&p[rule.tests[k].index]))
-		}
-		to := Approve
-		switch rule.Effect {
-		case DeclineEffect:
-			to = Decline
-		case ReferEffect:
-			to = Refer
-		}
-		if fires == Sure {
+		switch rule.may(&p) {
+		case Sure:
 			b.Fires |= 1 << i
-			b.Mildest = stricter(b.Mildest, to)
-		}
-		if fires != Not {
-			b.Strictest = stricter(b.Strictest, to)
-		}
-		if fires == Perhaps {
+			b.Mildest = stricter(b.Mildest, rule.Effect.recommends())
+			b.Strictest = stricter(b.Strictest, rule.Effect.recommends())
+		case Perhaps:
 			b.May |= 1 << i
+			b.Strictest = stricter(b.Strictest, rule.Effect.recommends())
 		}
 	}
+	for _, i := range e.asked {
+		if s := a.values[i].state; p.of[i].states != set(IsNotApplicable) && (s == Missing || s == IsNotApplicable) {
+			b.Missing = append(b.Missing, i)
+		}
+	}
+	b.Narrows = e.narrows(a, b, &p)
 	return b
 }
 
+// sumRange is the range of the log-odds.
+func (e *Edition) sumRange(p *possibles) (lowest, highest LogOdds) {
+	lowest, highest = e.constant, e.constant
+	for _, i := range e.scored {
+		lo, hi := e.items[i].weightRange(&p.of[i])
+		lowest, highest = lowest+lo, highest+hi
+	}
+	return lowest, highest
+}
+
 // narrows finds the missing question with the greatest worst-case cut: each
-// is tried with every answer it may get (a number at its own bands' ends and
-// at the ends and the middle of what is accepted), and the answer that leaves
-// the widest bounds counts.
-func (e *Edition) narrows(a *Answers, now Bounds) int {
+// is tried with every answer it may get (a number at its own bands' starts and
+// at the ends and the middle of what is usual), and the answer that leaves the
+// widest bounds counts.
+func (e *Edition) narrows(a *Answers, now Bounds, p *possibles) int {
 	best, bestCut := -1, LogOdds(0)
 	try := a.Clone()
 	for _, i := range now.Missing {
 		widest := LogOdds(0)
-		for _, answer := range e.items[i].trials() {
-			try.given[i] = answer
-			b := e.bound(try)
-			widest = max(widest, b.Highest-b.Lowest)
-		}
-		try.given[i] = Answer{}
+		e.trials(&e.items[i], func(x value, d Date) {
+			try.values[i], try.given[i].Date = x, d
+			e.spread(try, p)
+			lowest, highest := e.sumRange(p)
+			widest = max(widest, highest-lowest)
+		})
+		try.values[i] = a.values[i]
 		if cut := now.Highest - now.Lowest - widest; cut > bestCut {
 			best, bestCut = i, cut
 		}
@@ -102,32 +90,36 @@ func (e *Edition) narrows(a *Answers, now Bounds) int {
 	return best
 }
 
-// trials are the answers to try for a missing question.
-func (item *Item) trials() []Answer {
-	var list []Answer
+// trials gives the answers to try for a missing question.
+func (e *Edition) trials(item *Item, try func(x value, d Date)) {
 	if item.UnknownAllowed {
-		list = append(list, Answer{State: StatedUnknown})
+		try(value{state: StatedUnknown, attr: int8(item.unknown)}, Date{})
 	}
 	switch item.Kind {
 	case Choice, YesNo:
 		for i, a := range item.Attributes {
 			if !reserved(a.Code) {
-				list = append(list, Answer{State: Given, Attribute: i})
+				try(value{state: Given, attr: int8(i)}, Date{})
 			}
 		}
 	case DateKind:
-		for _, year := range []int{1940, 1960, 1980, 2000} {
-			list = append(list, Answer{State: Given, Date: Date{Year: year}})
+		for _, year := range [...]int{1940, 1960, 1980, 2000} {
+			try(value{state: Given, n: Whole(int64(year)), attr: -1}, Date{Year: year})
 		}
 	default:
+		number := func(n Number) { try(value{state: Given, n: n, attr: int8(item.bandOf(n))}, Date{}) }
 		lo, hi := item.LowestAccepted.Or(0), item.HighestAccepted.Or(Whole(1_000_000))
-		numbers := []Number{lo, hi, lo/2 + hi/2}
-		for _, floor := range item.floors {
-			numbers = append(numbers, max(floor, -Largest))
+		switch t := &e.card.Terms; item.Code {
+		case Amount:
+			lo, hi = t.SmallestAmount, t.LargestAmount
+		case Term:
+			lo, hi = Whole(int64(t.ShortestTerm)), Whole(int64(t.LongestTerm))
 		}
-		for _, n := range numbers {
-			list = append(list, Answer{State: Given, Number: n})
+		number(lo)
+		number(hi)
+		number(lo/2 + hi/2)
+		for _, floor := range item.floors {
+			number(max(floor, lo))
 		}
 	}
-	return list
 }

@@ -47,10 +47,12 @@ func (f Fingerprint) TelephoneCode() string {
 // name, a line of columns, then a line a row; cells are parted by tabs, and a
 // tab, a line end or a backslash in a cell is escaped. Empty sheets and the
 // blank items of Card and Terms are left out. Text is NFC.
-func (s Scorecard) Canonical() string {
+func (s Scorecard) Canonical() string { return canonicalText(s.Sheets()) }
+
+func canonicalText(sheets []Sheet) string {
 	var b strings.Builder
 	b.WriteString(canonicalHead + "\n")
-	for _, sheet := range s.Sheets() {
+	for _, sheet := range sheets {
 		if len(sheet.Rows) == 0 {
 			continue
 		}
@@ -66,14 +68,19 @@ func (s Scorecard) Canonical() string {
 	return b.String()
 }
 
-var escaper = strings.NewReplacer(`\`, `\\`, "\t", `\t`, "\r\n", `\n`, "\r", `\n`, "\n", `\n`)
+var escaper = strings.NewReplacer(`\`, `\\`, "\t", `\t`, "\n", `\n`)
+
+var lineEnds = strings.NewReplacer("\r\n", "\n", "\r", "\n")
+
+// plainText is text in the one form that is kept: NFC, lines ended by \n.
+func plainText(text string) string { return norm.NFC.String(lineEnds.Replace(text)) }
 
 func writeCells(b *strings.Builder, cells []string) {
 	for i, cell := range cells {
 		if i > 0 {
 			b.WriteByte('\t')
 		}
-		b.WriteString(escaper.Replace(norm.NFC.String(cell)))
+		b.WriteString(escaper.Replace(plainText(cell)))
 	}
 	b.WriteByte('\n')
 }

@@ -68,27 +68,28 @@ func (c *Covar) UnmarshalText(b []byte) error {
 	if err != nil || math.IsInf(f, 0) || math.IsNaN(f) {
 		return Problem{Code: "not_a_number", Args: Args{"value": string(b)}}
 	}
-	if *c = Covar(f); c.float() != f {
+	*c = Covar(f + 0) // -0 becomes 0
+	if kept, _ := strconv.ParseFloat(c.String(), 64); kept != f {
 		return Problem{Code: "too_many_digits", Args: Args{"value": string(b), "most": "12"}}
 	}
 	return nil
 }
 
-// float is the value of the canonical text.
-func (c Covar) float() float64 {
-	f, _ := strconv.ParseFloat(c.String(), 64)
-	return f
-}
+// Float is c.
+func (c Covar) Float() float64 { return float64(c) }
 
 // Value is what a rule compares with: a number, a date's year, an attribute,
 // attributes with commas, or for between "18 to 75".
 type Value string
 
-// MarshalText is the text itself.
-func (v Value) MarshalText() ([]byte, error) { return []byte(v), nil }
+// MarshalText is the text with single spaces.
+func (v Value) MarshalText() ([]byte, error) {
+	return []byte(strings.Join(strings.Fields(plainText(string(v))), " ")), nil
+}
 
-// UnmarshalText takes any text, with single spaces.
+// UnmarshalText takes any text.
 func (v *Value) UnmarshalText(b []byte) error {
-	*v = Value(strings.Join(strings.Fields(string(b)), " "))
+	text, _ := Value(b).MarshalText() // cannot fail
+	*v = Value(text)
 	return nil
 }

@@ -12,31 +12,50 @@ func (c *compiler) covariance() {
 	if v == nil {
 		return
 	}
+	good := true
 	bad := func(row int, column, code string, args Args) {
 		c.add(Problem{Code: code, Place: at("Covariance", row, column), Args: args})
+		good = false
 	}
 	if !slices.Contains(v.Names, Base) {
 		bad(0, "", "covariance_without_base", nil)
 	}
-	errorsOf := c.standardErrors()
+	errors := c.standardErrors()
+	seen := map[string]bool{}
 	for i, name := range v.Names {
-		se, known := errorsOf[name]
+		se, known := errors[name]
+		variance := v.Values[i][i].Float()
 		switch {
-		case slices.Index(v.Names, name) < i:
+		case seen[name]:
 			bad(i+1, name, "repeated_code", Args{"value": name})
 		case name != Base && !known:
 			bad(i+1, name, "unknown_coefficient", Args{"value": name})
-		case se > 0 && math.Abs(math.Sqrt(math.Max(v.Values[i][i].float(), 0))-se) > 1e-6*se+1e-9:
+		case se > 0 && math.Abs(math.Sqrt(math.Max(variance, 0))-se) > 1e-6*se+1e-15:
 			bad(i+1, name, "covariance_not_standard_error", Args{"value": v.Values[i][i].String(), "expected": Covar(se * se).String()})
 		}
+		seen[name] = true
 		for k := range i {
 			if v.Values[i][k] != v.Values[k][i] {
 				bad(i+1, v.Names[k], "covariance_not_symmetric", Args{"value": v.Values[i][k].String(), "expected": v.Values[k][i].String()})
 			}
 		}
 	}
-	if !c.refused() && !semidefinite(v.Values) {
+	for i, a := range c.s.Attributes {
+		if name := coefficient(a); errors[name] > 0 && !seen[name] {
+			c.add(Problem{Code: "covariance_lacks", Place: at("Attributes", i+1, "Standard error"), Args: Args{"value": name}})
+		}
+	}
+	if good && !semidefinite(v.Values) {
 		bad(0, "", "covariance_not_semidefinite", nil)
+	}
+	c.e.base = slices.Index(v.Names, Base)
+	for i := range c.e.items {
+		item := &c.e.items[i]
+		item.slopeCovariance = slices.Index(v.Names, item.Code)
+		item.covariance = make([]int, len(item.Attributes))
+		for n, a := range item.Attributes {
+			item.covariance[n] = slices.Index(v.Names, coefficient(a))
+		}
 	}
 }
 
@@ -59,76 +78,41 @@ func coefficient(a Attribute) string {
 	return a.Characteristic + "." + a.Code
 }
 
-// semidefinite tries a Cholesky factorisation (A.-L. Cholesky, about 1910)
-// with as little slack as 12 digits ask for: a pivot may be that far below
-// zero, and then its column must vanish as well.
+// semidefinite tells whether a symmetric square is a covariance but for the
+// rounding of its numbers to 12 digits: scaled to correlations, and with that
+// much added to its diagonal, it must have a Cholesky factor (A.-L. Cholesky,
+// 1910). The slack allows for a hundred coefficients rounded all to the worst.
 func semidefinite(values [][]Covar) bool {
-	n := len(values)
-	l := make([][]float64, n)
-	for i := range n {
-		l[i] = make([]float64, i+1)
-		for k := range i + 1 {
-			sum := values[i][k].float()
-			for m := range k {
-				sum -= float64(l[i][m] * l[k][m])
-			}
-			slack := 1e-9 * (math.Abs(values[i][i].float()) + math.Abs(values[k][k].float()))
-			switch {
-			case k == i && sum < -slack:
-				return false
-			case k == i:
-				l[i][i] = math.Sqrt(math.Max(sum, 0))
-			case l[k][k]*l[k][k] > slack*1e-3:
-				l[i][k] = sum / l[k][k]
-			case math.Abs(sum) > math.Sqrt(slack*math.Abs(values[i][i].float()))+slack:
-				return false
-			}
+	const slack = 1e-10
+	scale := make([]float64, len(values))
+	l := make([][]float64, len(values))
+	for i, row := range values {
+		if row[i] < 0 {
+			return false
 		}
+		scale[i] = math.Sqrt(row[i].Float())
+		l[i] = make([]float64, i+1)
+		for k := range i {
+			if row[k] == 0 {
+				continue
+			}
+			if scale[i] == 0 || scale[k] == 0 {
+				return false
+			}
+			l[i][k] = row[k].Float() / scale[i] / scale[k]
+		}
+		left := 1 + slack
+		for k := range i {
+			for m := range k {
+				l[i][k] -= float64(l[i][m] * l[k][m])
+			}
+			l[i][k] /= l[k][k]
+			left -= float64(l[i][k] * l[i][k])
+		}
+		if left <= 0 {
+			return false
+		}
+		l[i][i] = math.Sqrt(left)
 	}
 	return true
 }
-
-// Z95 is the point that a standard normal variable exceeds with probability
-// 0.025.
-const Z95 = 1.959963984540054
-
-// Range is the 95 % range of the PD from the sampling error of the
-// coefficients alone; ok is false where the workbook has no covariance. A
-// known later adjustment adds nothing, an estimated one its own variance.
-func (e *Edition) Range(a *Answers) (low, high PD, ok bool) {
-	var v values
-	if e.card.Covariance == nil || !e.evaluate(a, &v) {
-		return 0, 0, false
-	}
-	x := map[string]float64{Base: 1}
-	sum := e.constant
-	for i := range e.items {
-		item := &e.items[i]
-		if item.Use != Scored {
-			continue
-		}
-		sum += item.weight(&v[i])
-		if n := item.attributeOf(v[i]); n >= 0 {
-			x[item.Code+"."+item.Attributes[n].Code] = 1
-		}
-		if v[i].state == Given && item.slope.Digits != 0 {
-			x[item.Code] = min(max(v[i].n, item.from), item.to).Float()
-		}
-	}
-	se := e.card.AdjustmentError()
-	variance := float64(se * se)
-	names := e.card.Covariance.Names
-	for i, row := range e.card.Covariance.Values {
-		for k, c := range row {
-			if x[names[i]] != 0 && x[names[k]] != 0 {
-				variance += float64(float64(x[names[i]]*x[names[k]]) * float64(c))
-			}
-		}
-	}
-	half := float64(Z95 * math.Sqrt(math.Max(variance, 0)))
-	return pdOf(sum.Float() - half), pdOf(sum.Float() + half), true
-}
-
-// AdjustmentError is the standard error of the later adjustment, 0 for a
-// known one.
-func (s *Scorecard) AdjustmentError() float64 { return s.Card.AdjustmentSE.Or(0).Float() }

@@ -104,7 +104,8 @@ func (d Date) AddMonths(n int) Date {
 }
 
 // WholeYears counts the birthdays of born up to and on the day d; negative
-// when born is later.
+// when born is later. Who was born on 29 February has, in a common year, the
+// birthday on 1 March. A year alone may be a year out either way: see midYear.
 func (d Date) WholeYears(born Date) int {
 	d, born = d.midYear(), born.midYear()
 	years := d.Year - born.Year
@@ -115,4 +116,4 @@ func (d Date) WholeYears(born Date) int {
 }
 
 // DaysTo counts the days from d to e.
-func (d Date) DaysTo(e Date) int { return int(e.Time().Sub(d.Time()).Hours() / 24) }
+func (d Date) DaysTo(e Date) int { return int((e.Time().Unix() - d.Time().Unix()) / (24 * 60 * 60)) }

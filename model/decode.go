@@ -185,9 +185,11 @@ func (d *decoder) covariance(form SheetForm) *Covariance {
 		return nil
 	}
 	c := &Covariance{}
-	for _, name := range sheet.Columns[min(1, len(sheet.Columns)):] {
-		if name != "" {
+	var columns []int
+	for i, name := range sheet.Columns {
+		if i > 0 && name != "" {
 			c.Names = append(c.Names, name)
+			columns = append(columns, i)
 		}
 	}
 	if len(sheet.Rows) != len(c.Names) {
@@ -202,7 +204,7 @@ func (d *decoder) covariance(form SheetForm) *Covariance {
 		values := make([]Covar, len(c.Names))
 		for i := range values {
 			d.cell(reflect.ValueOf(&values[i]).Elem(), CovarianceColumn,
-				Place{Sheet: form.Name, Row: r + 1, Column: c.Names[i]}, textAt(cells, i+1))
+				Place{Sheet: form.Name, Row: r + 1, Column: c.Names[i]}, textAt(cells, columns[i]))
 		}
 		c.Values = append(c.Values, values)
 	}

@@ -1,17 +1,15 @@
 package model
 
-import (
-	"slices"
+import "weighhouse/model/loan"
 
-	"weighhouse/model/loan"
-)
-
-// MostCharacteristics, MostAttributes, MostRules are how many an edition may
-// have: working space is then of fixed size, and scoring allocates nothing.
+// How much an edition may hold. Working space is then of fixed size, sets are
+// bits of one word, and scoring allocates nothing.
 const (
 	MostCharacteristics = 64
-	MostAttributes      = 64
+	MostAttributes      = 64 // of one characteristic
 	MostRules           = 64
+	MostBands           = 64
+	MostLines           = 200 // of one worksheet
 )
 
 // An Edition is a scorecard compiled into tables: numbered, frozen, never
@@ -21,10 +19,13 @@ type Edition struct {
 	fingerprint Fingerprint
 	items       []Item
 	byCode      map[string]int
-	order       []int // computed items, each after its parts
+	asked       []int // indexes of what is asked, in order
+	order       []int // of what is computed, each after its parts
+	scored      []int
 	rules       []rule
-	bands       []band
+	bands       []PD // where each band starts
 	plan        *loan.Plan
+	base        int // place of the base among the covariance's names
 	// score = offset - factor × log-odds
 	factor, offset float64
 	// base + later adjustment
@@ -47,32 +48,19 @@ type Item struct {
 
 	condition *condition
 	parts     []part
-	// Tables for scoring. A number's value falls in the last band whose floor
-	// is not above it; ordinary attributes come first in floors.
-	floors      []Number
-	weights     []LogOdds // by place among Attributes
-	at          []int     // place among Attributes, by place among floors
-	slope       Slope
-	from, to    Number // the clamp
-	unknown     int    // places among Attributes, -1 where there is none
-	notApplies  int
-	nothingLeft int
-}
-
-type part struct {
-	index    int
-	negative bool
-}
-
-// condition is "asked only if": the answer to item index is one of a set.
-type condition struct {
-	index int
-	among uint64
-}
-
-type band struct {
-	from  PD
-	index int // among Scorecard.Bands
+	// Tables for scoring. A number falls in the last band whose floor is not
+	// above it; bandAt is each band's place among Attributes.
+	weights  []LogOdds // by place among Attributes
+	floors   []Number
+	bandAt   []int
+	slope    Slope
+	from, to Number // the clamp
+	// Places among Attributes, -1 where there is none.
+	unknown, notApplies, nothingLeft int
+	slopeReason                      string
+	// Places among the covariance's names, -1 where there is none.
+	covariance      []int // by place among Attributes
+	slopeCovariance int
 }
 
 // Scorecard is what the edition was compiled from. It must not be changed.
@@ -85,7 +73,7 @@ func (e *Edition) Fingerprint() Fingerprint { return e.fingerprint }
 func (e *Edition) TelephoneCode() string { return e.fingerprint.TelephoneCode() }
 
 // Items are all characteristics in the workbook's order, amount and term
-// first where it does not list them.
+// first where it does not list them. They must not be changed.
 func (e *Edition) Items() []Item { return e.items }
 
 // Item finds a characteristic by its code.
@@ -100,62 +88,58 @@ func (e *Edition) Item(code string) (*Item, bool) {
 // Plan is how loans of this product are paid back.
 func (e *Edition) Plan() *loan.Plan { return e.plan }
 
-// Compile checks everything that s says and makes an Edition of it. It lists
-// every problem at once; only where all of them are warnings is there an
-// Edition.
-func Compile(s Scorecard) (*Edition, []Problem) {
-	c := &compiler{s: s, e: &Edition{card: s, fingerprint: s.Fingerprint(), byCode: map[string]int{}}}
-	c.cards()
-	c.characteristics()
-	c.attributes()
-	c.lines()
-	c.computed()
-	c.conditions()
-	c.protected()
-	c.bands()
-	c.terms()
-	c.rules()
-	c.overrides()
-	c.words()
-	c.covariance()
-	if c.refused() {
-		return nil, c.problems
+// isChoice tells that an item is answered by picking an attribute.
+func (item *Item) isChoice() bool { return item.Kind == Choice || item.Kind == YesNo }
+
+// clamp is a number as it is counted.
+func (item *Item) clamp(n Number) Number { return min(max(n, item.from), item.to) }
+
+// attribute finds the place of a choice's code.
+func (item *Item) attribute(code string) (int, error) {
+	for i, a := range item.Attributes {
+		if a.Code == code && !reserved(code) {
+			return i, nil
+		}
 	}
-	c.checks()
-	if c.refused() {
-		return nil, c.problems
+	return 0, Problem{Code: "unknown_attribute", Args: Args{"value": code, "options": item.options()}}
+}
+
+// stateAttribute is the place of a state's reserved attribute, -1 for none.
+func (item *Item) stateAttribute(s State) int {
+	switch s {
+	case StatedUnknown:
+		return item.unknown
+	case IsNotApplicable:
+		return item.notApplies
+	case IsNothingLeft:
+		return item.nothingLeft
 	}
-	return c.e, c.problems
+	return -1
 }
 
-// compiler gathers an edition and the problems of its scorecard.
-type compiler struct {
-	s        Scorecard
-	e        *Edition
-	problems []Problem
-}
-
-func (c *compiler) add(p Problem)  { c.problems = append(c.problems, p) }
-func (c *compiler) warn(p Problem) { p.Warning = true; c.add(p) }
-
-func (c *compiler) refused() bool {
-	return slices.ContainsFunc(c.problems, func(p Problem) bool { return !p.Warning })
-}
-
-// at is the place of a cell.
-func at(sheet string, row int, column string) Place {
-	return Place{Sheet: sheet, Row: row, Column: column}
-}
-
-// item finds a compiled item, or nil.
-func (c *compiler) item(code string) *Item {
-	i, ok := c.e.byCode[code]
-	if !ok {
-		return nil
+// bandOf is the place among Attributes of a number's band, -1 without bands.
+func (item *Item) bandOf(n Number) int {
+	if len(item.floors) == 0 {
+		return -1
 	}
-	return &c.e.items[i]
+	return item.bandAt[item.floorOf(n)]
 }
 
-// row is the workbook's row of an item under Characteristics; 0 where amount
-// or term is not listed.
-func (c *compiler) row(item *Item) int { return c.s.characteristic(item.Code) + 1 }
+// floorOf is the place among floors of a number's band; there must be one.
+func (item *Item) floorOf(n Number) int {
+	n = item.clamp(n)
+	i := len(item.floors) - 1
+	for i > 0 && n < item.floors[i] {
+		i--
+	}
+	return i
+}
+
+func (item *Item) line(code string) int {
+	for i, l := range item.Lines {
+		if l.Code == code {
+			return i
+		}
+	}
+	return -1
+}

@@ -1,6 +1,9 @@
 package model
 
-import "reflect"
+import (
+	"reflect"
+	"slices"
+)
 
 // Sheets writes s as tables of canonical text, every sheet of Forms in order.
 func (s Scorecard) Sheets() []Sheet {
@@ -81,7 +84,7 @@ func (s Scorecard) covarianceSheet(form SheetForm) Sheet {
 	}
 	sheet.Columns = append(sheet.Columns, s.Covariance.Names...)
 	for i, row := range s.Covariance.Values {
-		cells := []string{s.Covariance.Names[i]}
+		cells := []string{textAt(s.Covariance.Names, i)}
 		for _, v := range row {
 			cells = append(cells, v.String())
 		}
@@ -96,7 +99,7 @@ func (s Scorecard) covarianceSheet(form SheetForm) Sheet {
 func (s Scorecard) AskedCodes() []string {
 	var codes []string
 	for _, c := range s.withReserved() {
-		if c.Kind != Computed {
+		if c.Kind != Computed && c.Code != "" && !slices.Contains(codes, c.Code) {
 			codes = append(codes, c.Code)
 		}
 	}

@@ -233,6 +233,17 @@ const (
 // Options lists the effects.
 func (Effect) Options() []string { return []string{"decline", "refer", "largest amount", "note"} }
 
+// recommends is what an effect makes of an approval.
+func (f Effect) recommends() Recommendation {
+	switch f {
+	case DeclineEffect:
+		return Decline
+	case ReferEffect:
+		return Refer
+	}
+	return Approve
+}
+
 // Direction is which way a departure from the recommendation goes.
 type Direction string
 

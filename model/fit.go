@@ -10,10 +10,11 @@ type Offer struct {
 // TermsThatFit looks for amounts and terms, never above the amount asked and
 // with every fact of the applicant left as it is, for which the edition
 // recommends to approve within the rules' caps. For each allowed term it gives
-// the largest amount that fits. What fits need not be an interval (a longer
-// term lowers the payment but may raise the risk), so every term and every
-// step of the amount is tried. Complete answers are needed; without them, and
-// where nothing fits, there is no offer.
+// the largest amount that fits: what was asked, or the largest step, counted
+// from the smallest amount, below it. What fits need not be an interval (a
+// longer term lowers the payment but may raise the risk), so every term and
+// every step is tried. Complete answers are needed; without them, and where
+// nothing fits, there is no offer.
 func (e *Edition) TermsThatFit(a *Answers) []Offer {
 	asked, _, ok := a.AmountAndTerm()
 	if !ok {
@@ -21,16 +22,20 @@ func (e *Edition) TermsThatFit(a *Answers) []Offer {
 	}
 	t := e.card.Terms
 	try := a.Clone()
-	amount, term := e.byCode[Amount], e.byCode[Term]
-	// Steps count from the smallest amount. The asked amount itself is tried
-	// first, whether a step or not.
+	amount, term := &e.items[e.byCode[Amount]], &e.items[e.byCode[Term]]
+	put := func(item *Item, n Number) {
+		try.values[item.Index].n, try.values[item.Index].attr = n, int8(item.bandOf(n))
+	}
 	top := min(asked, t.LargestAmount)
-	first := t.SmallestAmount + (top-t.SmallestAmount)/t.AmountStep*t.AmountStep
+	step := t.SmallestAmount + (top-t.SmallestAmount)/t.AmountStep*t.AmountStep // the first at top or below
 	var offers []Offer
 	for n := int(t.ShortestTerm); n <= int(t.LongestTerm); n++ {
-		try.given[term].Number = Whole(int64(n))
-		for x := top; x >= t.SmallestAmount; {
-			try.given[amount].Number = x
+		put(term, Whole(int64(n)))
+		for x, next := top, step; x >= t.SmallestAmount; x, next = next, next-t.AmountStep {
+			if x == next {
+				next -= t.AmountStep
+			}
+			put(amount, x)
 			r, ok := e.Score(try)
 			if !ok {
 				return nil
@@ -38,11 +43,6 @@ func (e *Edition) TermsThatFit(a *Answers) []Offer {
 			if r.Recommendation == Approve && x <= r.LargestAmount.Or(Largest) {
 				offers = append(offers, Offer{x, n, r})
 				break
-			}
-			if x == top && first < top {
-				x = first
-			} else {
-				x -= t.AmountStep
 			}
 		}
 	}

@@ -21,23 +21,23 @@ func (e *Edition) Ground(a *Answers, today Date) []Problem {
 	}
 	var p possibles
 	e.spread(a, &p)
-	for i := range e.items {
+	for _, i := range e.scored {
 		item := &e.items[i]
-		x, ok := p[i].single(item)
-		if !ok || item.Use != Scored {
+		x, ok := p.of[i].single(item)
+		if !ok {
 			continue
 		}
-		number := x.state == Given && item.Kind != Choice && item.Kind != YesNo
-		if number && (x.n < item.SeenFrom.Or(-Largest) || x.n > item.SeenTo.Or(Largest)) {
+		if x.state == Given && !item.isChoice() && (x.n < item.SeenFrom.Or(-Largest) || x.n > item.SeenTo.Or(Largest)) {
 			add("outside_seen", item.Code, Args{"value": x.n.String(),
 				"least": item.SeenFrom.Or(-Largest).String(), "most": item.SeenTo.Or(Largest).String()})
 		}
-		if n := item.attributeOf(x); n >= 0 {
-			b := item.Attributes[n]
-			if (b.Loans.Set && b.Loans.Value < FewOfOne) || (b.Defaults.Set && b.Defaults.Value < FewDefaults) {
-				add("few_of_attribute", item.Code, Args{"value": b.Label,
-					"loans": strconv.Itoa(int(b.Loans.Or(0))), "defaults": strconv.Itoa(int(b.Defaults.Or(0)))})
-			}
+		if x.attr < 0 {
+			continue
+		}
+		b := item.Attributes[x.attr]
+		if (b.Loans.Set && b.Loans.Value < FewOfOne) || (b.Defaults.Set && b.Defaults.Value < FewDefaults) {
+			add("few_of_attribute", item.Code, Args{"value": b.Label,
+				"loans": strconv.Itoa(int(b.Loans.Value)), "defaults": strconv.Itoa(int(b.Defaults.Value))})
 		}
 	}
 	if n := e.card.Card.LoansUsed; n.Set && n.Value < FewLoans {

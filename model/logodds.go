@@ -1,7 +1,6 @@
 package model
 
 import (
-	"math"
 	"math/bits"
 	"strconv"
 	"strings"
@@ -118,41 +117,22 @@ func (s Slope) Float() float64 {
 // one rounding to a billionth, half to even, stopping at a million.
 func (s Slope) At(v Number) LogOdds {
 	hi, lo := bits.Mul64(abs(s.Digits), abs(int64(v)))
-	// The product is in 10^-(Places+6); billionths are 10^-9.
-	var q, r uint64
-	d := uint64(1)
-	shift := int(s.Places) + MostDecimals - 9
-	if shift >= 0 {
-		d = uint64(tenTo(shift))
-		if hi >= d {
-			q = math.MaxUint64
-		} else {
+	// The product counts units of 10^-(Places+6); log-odds count 10^-9.
+	q := uint64(largestLogOdds)
+	if shift := int(s.Places) + MostDecimals - 9; shift >= 0 {
+		if d := uint64(pow10[shift]); hi < d {
+			var r uint64
 			q, r = bits.Div64(hi, lo, d)
+			if r > d-r || (r == d-r && q%2 == 1) {
+				q++
+			}
 		}
-	} else {
-		m := uint64(tenTo(-shift))
-		over, low := bits.Mul64(lo, m)
-		if hi != 0 || over != 0 {
-			low = math.MaxUint64
-		}
-		q = low
+	} else if m := uint64(pow10[-shift]); hi == 0 && lo <= uint64(largestLogOdds)/m {
+		q = lo * m
 	}
-	if q > uint64(largestLogOdds) {
-		q, r = uint64(largestLogOdds), 0
-	}
-	if cmp := compare(r, d-r); cmp > 0 || (cmp == 0 && q%2 == 1) {
-		q++
-	}
+	l := LogOdds(min(q, uint64(largestLogOdds)))
 	if (s.Digits < 0) != (v < 0) {
-		return -LogOdds(q)
+		return -l
 	}
-	return LogOdds(q)
-}
-
-func tenTo(n int) int64 {
-	p := int64(1)
-	for range n {
-		p *= 10
-	}
-	return p
+	return l
 }

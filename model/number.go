@@ -3,6 +3,7 @@ package model
 import (
 	"math"
 	"math/bits"
+	"slices"
 	"strings"
 )
 
@@ -65,81 +66,93 @@ func (n Number) Plus(m Number) Number { return clampNumber(int64(n) + int64(m)) 
 func (n Number) Minus(m Number) Number { return clampNumber(int64(n) - int64(m)) }
 
 // Times is n × m rounded half up to the given decimals, saturating.
-func (n Number) Times(m Number, decimals int) Number {
-	return mulDiv(n, m, One, decimals)
-}
+func (n Number) Times(m Number, decimals int) Number { return product(decimals, n, m) }
 
 // Over is n ÷ m rounded half up to the given decimals, saturating. m must be
 // above zero.
 func (n Number) Over(m Number, decimals int) Number {
-	return mulDiv(n, One, m, decimals)
+	hi, lo := bits.Mul64(2*abs(int64(n)), uint64(One))
+	w := [...]uint64{lo, hi}
+	rest := shorten(w[:], uint64(m))
+	return halfUp(w[:], rest, n < 0, decimals)
 }
 
-// Round is n to the given decimals, half up (towards plus infinity).
-func (n Number) Round(decimals int) Number { return mulDiv(n, One, One, decimals) }
+// Round is n to the given decimals, half up: towards plus infinity, so that
+// -0.5 goes to 0 as 0.5 goes to 1, and a shift by a whole number shifts what
+// is rounded by as much.
+func (n Number) Round(decimals int) Number {
+	step := int64(pow10[MostDecimals-decimals])
+	return clampTo(floorDiv(int64(n)+step/2, step), step)
+}
 
 func clampNumber(n int64) Number {
-	if n > int64(Largest) {
-		return Largest
-	}
-	if n < -int64(Largest) {
-		return -Largest
-	}
-	return Number(n)
+	return Number(min(max(n, -int64(Largest)), int64(Largest)))
 }
 
-// mulDiv is a × b ÷ c rounded half up to decimals places; c > 0. The product
-// is held in 128 bits and rounded once.
-func mulDiv(a, b, c Number, decimals int) Number {
-	negative := (a < 0) != (b < 0)
-	hi, lo := bits.Mul64(abs(int64(a)), abs(int64(b)))
-	step := uint64(pow10[MostDecimals-min(max(decimals, 0), MostDecimals)])
-	// Quotient in steps; a divisor c×step may not fit 64 bits, so divide twice
-	// and keep both remainders' news in one flag.
-	q1hi, q1lo, r1 := div128(hi, lo, uint64(c))
-	q2hi, q2lo, r2 := div128(q1hi, q1lo, step)
-	if q2hi != 0 || q2lo > uint64(Largest)/step {
-		if negative {
-			return -Largest
+// clampTo is q steps, stopping at the last whole step within the range.
+func clampTo(q, step int64) Number {
+	most := int64(Largest) / step
+	return Number(min(max(q, -most), most) * step)
+}
+
+func floorDiv(a, b int64) int64 {
+	q := a / b
+	if a%b < 0 {
+		q--
+	}
+	return q
+}
+
+// product is the exact product of at most MostParts numbers, rounded once,
+// half up, to the given decimals, saturating.
+func product(decimals int, factors ...Number) Number {
+	var words [MostParts]uint64 // 60 bits a factor, the least significant word first
+	w := words[:len(factors)]
+	w[0] = 2
+	negative := false
+	for _, f := range factors {
+		negative = negative != (f < 0)
+		carry := uint64(0)
+		for i := range w {
+			hi, lo := bits.Mul64(w[i], abs(int64(f)))
+			sum, over := bits.Add64(lo, carry, 0)
+			w[i], carry = sum, hi+over
 		}
-		return Largest
 	}
-	q := q2lo
-	// The fraction of a step is (r2 + r1/c)/step; compare with one half.
-	// 2·r2 against step, then r1 as the tie breaker. step is 1 or even.
-	var cmp int
-	if step == 1 {
-		cmp = compare(r1, uint64(c)-r1)
-	} else if cmp = compare(2*r2, step); cmp == 0 && r1 > 0 {
-		cmp = 1
+	rest := false
+	for range len(factors) - 1 {
+		rest = shorten(w, uint64(One)) || rest
 	}
-	if cmp > 0 || (cmp == 0 && !negative) {
-		q++
-	}
-	if q > uint64(Largest)/step {
-		q = uint64(Largest) / step
-	}
-	n := Number(q * step)
-	if negative {
-		n = -n
-	}
-	return n
+	return halfUp(w, rest, negative, decimals)
 }
 
-func compare(a, b uint64) int {
-	switch {
-	case a < b:
-		return -1
-	case a > b:
-		return 1
+// shorten divides a number of several words and tells whether there was a
+// rest. d > 0.
+func shorten(w []uint64, d uint64) (rest bool) {
+	r := uint64(0)
+	for i := len(w) - 1; i >= 0; i-- {
+		w[i], r = bits.Div64(r, w[i], d)
 	}
-	return 0
+	return r != 0
 }
 
-func div128(hi, lo, d uint64) (qhi, qlo, r uint64) {
-	qhi, r = hi/d, hi%d
-	qlo, r = bits.Div64(r, lo, d)
-	return qhi, qlo, r
+// halfUp rounds what w holds, twice as many millionths and perhaps a rest
+// more, half up to the given decimals.
+func halfUp(w []uint64, rest, negative bool, decimals int) Number {
+	step := pow10[MostDecimals-decimals]
+	rest = shorten(w, uint64(step)) || rest
+	twice := uint64(2 * Largest)
+	if !slices.ContainsFunc(w[1:], func(word uint64) bool { return word != 0 }) {
+		twice = min(w[0], twice)
+	}
+	switch q := int64(twice); {
+	case !negative:
+		return clampTo((q+1)/2, step)
+	case rest:
+		return clampTo(-(q+1)/2, step)
+	default: // a half is a tie, and goes up
+		return clampTo(-q/2, step)
+	}
 }
 
 func abs(n int64) uint64 {
@@ -149,7 +162,8 @@ func abs(n int64) uint64 {
 	return uint64(n)
 }
 
-var pow10 = [...]int64{1, 10, 100, 1000, 10_000, 100_000, 1_000_000, 10_000_000, 100_000_000, 1_000_000_000}
+var pow10 = [...]int64{1, 10, 100, 1_000, 10_000, 100_000, 1_000_000, 10_000_000, 100_000_000, 1_000_000_000,
+	10_000_000_000, 100_000_000_000, 1_000_000_000_000}
 
 // parseFixed reads canonical decimal text into units of 10^-places.
 func parseFixed(text string, places int) (int64, error) {

@@ -1,18 +1,19 @@
 package model
 
+import "math/bits"
+
 // What may still come: while answers are missing, every item has a set of
 // possible values instead of one, and so the result has bounds. The sets are
 // never too small. They are tight where no missing answer is shared between
-// two computed items.
+// two computed items, or between two parts of one.
 
 // possible is the set of values that an item may still come to have.
 type possible struct {
-	states stateSet
-	attrs  uint64 // of a choice, when Given
-	lo, hi Number // of a number, when Given
-	told   Truth  // whether what is Given was only told
-	from   Date   // of a date, the earliest and the latest
-	until  Date
+	states      stateSet
+	told        Truth  // whether what is Given was only told
+	attrs       uint64 // of a choice or a number, when Given: places among Attributes
+	lo, hi      Number // of a number, when Given
+	from, until Date   // of a date, the earliest and the latest
 }
 
 // Truth may still be open while answers are missing.
@@ -27,13 +28,6 @@ const (
 // and is the least certain of two truths.
 func (t Truth) and(u Truth) Truth { return min(t, u) }
 
-func truth(b bool) Truth {
-	if b {
-		return Sure
-	}
-	return Not
-}
-
 // either merges two truths of which either may come.
 func (t Truth) either(u Truth) Truth {
 	if t == u {
@@ -42,270 +36,275 @@ func (t Truth) either(u Truth) Truth {
 	return Perhaps
 }
 
+func truth(b bool) Truth {
+	if b {
+		return Sure
+	}
+	return Not
+}
+
+// A stateSet is a set of States.
+type stateSet uint8
+
+func set(s State) stateSet            { return 1 << s }
+func (s stateSet) has(one State) bool { return s&set(one) != 0 }
+
+// possibles are all items' possible values, in space of fixed size.
+type possibles struct {
+	of [MostCharacteristics]possible
+	// The last instalment worked out, for trying other answers with the same
+	// loan.
+	loan struct {
+		amount        Number
+		term, payment [2]Number
+	}
+}
+
 // open spans the possible values of an item about which nothing is known:
 // what is accepted is only questioned, so a number may be anything.
-func (item *Item) open(on Date) possible {
-	p := possible{states: set(Given), lo: -Largest, hi: Largest, told: Perhaps,
-		from: Date{1800, 1, 1}, until: Date{2999, 12, 31}}
+func (item *Item) open() possible {
+	p := possible{states: set(Given), told: Perhaps}
 	if item.UnknownAllowed {
 		p.states |= set(StatedUnknown)
 	}
-	for i, a := range item.Attributes {
-		if !reserved(a.Code) {
-			p.attrs |= 1 << i
+	switch item.Kind {
+	case Choice, YesNo:
+		for i, a := range item.Attributes {
+			if !reserved(a.Code) {
+				p.attrs |= 1 << i
+			}
 		}
+	case DateKind:
+		p.from, p.until = Date{1800, 1, 1}, Date{2999, 12, 31} // all that ParseDate takes
+		p.lo, p.hi = Whole(1800), Whole(2999)
+	default:
+		p.lo, p.hi = -Largest, Largest
+		p.attrs = item.bandsOf(p.lo, p.hi)
 	}
 	return p
 }
 
-// exact is the set of one value.
-func exact(x value, d Date) possible {
-	return possible{states: set(x.state), attrs: 1 << x.attr, lo: x.n, hi: x.n, told: truth(x.told), from: d, until: d}
+// bandsOf are the bands that numbers from lo to hi fall in.
+func (item *Item) bandsOf(lo, hi Number) uint64 {
+	attrs := uint64(0)
+	if len(item.floors) > 0 {
+		for i := item.floorOf(lo); i <= item.floorOf(hi); i++ {
+			attrs |= 1 << item.bandAt[i]
+		}
+	}
+	return attrs
 }
 
-type possibles [MostCharacteristics]possible
+// exact is the set of one value.
+func exact(x value, d Date) possible {
+	p := possible{states: set(x.state), lo: x.n, hi: x.n, told: truth(x.told), from: d, until: d}
+	if x.attr >= 0 && x.state == Given {
+		p.attrs = 1 << x.attr
+	}
+	return p
+}
 
 // spread works out every item's possible values.
 func (e *Edition) spread(a *Answers, p *possibles) {
-	for i := range e.items {
+	for _, i := range e.asked {
 		item := &e.items[i]
-		if item.Kind == Computed {
-			continue
-		}
 		applies := Sure
 		if item.condition != nil {
 			applies = item.condition.may(p)
 		}
-		g := &a.given[i]
-		switch {
+		switch x := a.values[i]; {
 		case applies == Not:
-			p[i] = exact(value{state: IsNotApplicable}, Date{})
+			p.of[i] = possible{states: set(IsNotApplicable)}
 			continue
-		case g.State == Missing || g.State == IsNotApplicable:
-			p[i] = item.open(a.On)
+		case x.state == Missing || x.state == IsNotApplicable:
+			p.of[i] = item.open()
 		default:
-			x := value{n: g.Number, attr: g.Attribute, state: g.State, told: !g.Seen}
-			if g.Lines != nil {
-				x.n = item.Monthly(g.Lines)
-			}
-			if item.Kind == DateKind {
-				x.n = Whole(int64(g.Date.Year))
-			}
-			p[i] = exact(x, g.Date)
+			p.of[i] = exact(x, a.given[i].Date)
 		}
 		if applies == Perhaps {
-			p[i].states |= set(IsNotApplicable)
+			p.of[i].states |= set(IsNotApplicable)
 		}
 	}
 	for _, i := range e.order {
-		p[i] = e.spreadComputed(&e.items[i], a, p)
+		e.spreadComputed(&e.items[i], a, p)
 	}
-}
-
-// may tells whether the condition holds.
-func (c *condition) may(p *possibles) Truth {
-	x := &p[c.index]
-	switch {
-	case !x.states.has(Given) || x.attrs&c.among == 0:
-		return Not
-	case x.states == set(Given) && x.attrs&^c.among == 0:
-		return Sure
-	}
-	return Perhaps
 }
 
 // spreadComputed does for sets what compute does for values.
-func (e *Edition) spreadComputed(item *Item, a *Answers, p *possibles) possible {
-	out := possible{states: set(Given), told: Not}
-	given := true // whether Given is possible at all
+func (e *Edition) spreadComputed(item *Item, a *Answers, p *possibles) {
+	out := &p.of[item.Index]
+	*out = possible{}
+	possible, forced := set(Given), stateSet(0) // of any part; of all values of some part
 	for _, part := range item.parts {
-		x := &p[part.index]
+		x := &p.of[part.index]
 		s := x.states
 		if item.Operation == Sum && s.has(IsNotApplicable) {
 			s = s&^set(IsNotApplicable) | set(Given)
 		}
-		out.states |= s &^ set(Given)
-		given = given && s.has(Given)
-		if x.states.has(Given) {
-			// Told when any given part was: no only where all were surely seen.
-			switch {
-			case x.told == Sure && x.states == set(Given):
-				out.told = Sure
-			case x.told != Not && out.told == Not:
-				out.told = Perhaps
-			}
+		possible |= s
+		if !s.has(Given) {
+			forced |= lowest(s)
+		}
+		switch {
+		case !x.states.has(Given):
+		case x.told == Sure && x.states == set(Given):
+			out.told = Sure
+		case x.told != Not && out.told == Not:
+			out.told = Perhaps
 		}
 	}
-	if !given {
-		out.states &^= set(Given)
+	// A state is possible if some part can have it and none is sure to have one
+	// that outranks it.
+	for _, s := range outranking {
+		if possible.has(s) {
+			out.states |= set(s)
+		}
+		if forced.has(s) {
+			return
+		}
 	}
+	out.states |= set(Given)
+	parts := item.parts
 	decimals := int(item.Decimals)
 	switch item.Operation {
 	case Sum:
-		for _, part := range item.parts {
-			lo, hi := p[part.index].range0()
+		var lo, hi int64
+		for _, part := range parts {
+			l, h := p.of[part.index].term()
 			if part.negative {
-				lo, hi = -hi, -lo
+				l, h = -h, -l
 			}
-			out.lo, out.hi = out.lo.Plus(lo), out.hi.Plus(hi)
+			lo, hi = lo+int64(l), hi+int64(h)
 		}
-		out.lo, out.hi = out.lo.Round(decimals), out.hi.Round(decimals)
+		out.lo, out.hi = clampNumber(lo).Round(decimals), clampNumber(hi).Round(decimals)
 	case Product:
-		out.lo, out.hi = One, One
-		for k, part := range item.parts {
-			places := MostDecimals
-			if k == len(item.parts)-1 {
-				places = decimals
-			}
-			x := &p[part.index]
-			out.lo, out.hi = corners(func(a, b Number) Number { return a.Times(b, places) }, out.lo, out.hi, x.lo, x.hi)
-		}
+		out.lo, out.hi = p.product(parts, decimals)
 	case Ratio:
-		d := &p[item.parts[1].index]
-		if d.states.has(Given) && given {
-			if d.lo <= 0 {
-				out.states |= set(IsNothingLeft)
-			}
-			if d.hi <= 0 {
-				out.states &^= set(Given)
-				break
-			}
+		n, d := &p.of[parts[0].index], &p.of[parts[1].index]
+		if d.lo <= 0 {
+			out.states |= set(IsNothingLeft)
 		}
-		n := &p[item.parts[0].index]
-		out.lo, out.hi = corners(func(a, b Number) Number { return a.Over(b, decimals) }, n.lo, n.hi, max(d.lo, 1), max(d.hi, 1))
+		if d.hi <= 0 {
+			out.states &^= set(Given)
+			return
+		}
+		// For a divisor above zero the ratio is monotone in both.
+		least, most := max(d.lo, 1), d.hi
+		out.lo = min(n.lo.Over(least, decimals), n.lo.Over(most, decimals))
+		out.hi = max(n.hi.Over(least, decimals), n.hi.Over(most, decimals))
 	case Instalment:
-		out.lo, out.hi = e.instalmentRange(p[item.parts[0].index], p[item.parts[1].index])
-		out.lo, out.hi = out.lo.Round(decimals), out.hi.Round(decimals)
+		lo, hi := e.instalmentRange(p, parts[0].index, parts[1].index)
+		out.lo, out.hi = lo.Round(decimals), hi.Round(decimals)
 	case WholeYears:
-		born := &p[item.parts[0].index]
+		born := &p.of[parts[0].index]
 		out.lo, out.hi = years(a.On, born.until), years(a.On, born.from)
 	case AgeAtLastPayment:
-		born, term := &p[item.parts[0].index], &p[item.parts[1].index]
+		born, term := &p.of[parts[0].index], &p.of[parts[1].index]
 		out.lo = years(e.LastPayment(a.On, term.lo), born.until)
 		out.hi = years(e.LastPayment(a.On, term.hi), born.from)
 	}
-	return out
+	out.attrs = item.bandsOf(out.lo, out.hi)
 }
 
-func years(on, born Date) Number { return Whole(int64(on.WholeYears(born))) }
+// lowest is the state of a set that is outranked by all others of it.
+func lowest(s stateSet) stateSet {
+	for _, r := range [...]State{IsNotApplicable, IsNothingLeft} {
+		if s.has(r) {
+			return set(r)
+		}
+	}
+	return s
+}
 
-// range0 is the range of a part of a sum, where what does not apply counts 0.
-func (x *possible) range0() (lo, hi Number) {
-	switch {
-	case !x.states.has(Given):
-		return 0, 0
-	case x.states.has(IsNotApplicable):
+// term is the range of a part of a sum, where what does not apply counts 0.
+func (x *possible) term() (lo, hi Number) {
+	if x.states.has(IsNotApplicable) {
 		return min(x.lo, 0), max(x.hi, 0)
 	}
 	return x.lo, x.hi
 }
 
-// corners is the range of an operation that is monotone in each operand.
-func corners(f func(a, b Number) Number, alo, ahi, blo, bhi Number) (lo, hi Number) {
-	w, x, y, z := f(alo, blo), f(alo, bhi), f(ahi, blo), f(ahi, bhi)
-	return min(w, x, y, z), max(w, x, y, z)
-}
-
-// weights is the range of log-odds that an item may still add.
-func (item *Item) weightRange(x *possible) (lo, hi LogOdds) {
-	first := true
-	take := func(l LogOdds) {
-		if first {
-			lo, hi, first = l, l, false
-		}
-		lo, hi = min(lo, l), max(hi, l)
-	}
-	for _, r := range [...]struct {
-		state State
-		index int
-	}{{StatedUnknown, item.unknown}, {IsNotApplicable, item.notApplies}, {IsNothingLeft, item.nothingLeft}} {
-		if x.states.has(r.state) && r.index >= 0 {
-			take(item.weights[r.index])
-		}
-	}
-	if !x.states.has(Given) {
-		return lo, hi
-	}
-	if item.Kind == Choice || item.Kind == YesNo {
-		for i, w := range item.weights {
-			if x.attrs&(1<<i) != 0 {
-				take(w)
+// product is the range of a product: its ends are among the products of the
+// parts' ends.
+func (p *possibles) product(parts []part, decimals int) (lo, hi Number) {
+	lo, hi = Largest, -Largest
+	for ends := range 1 << len(parts) {
+		var factors [MostParts]Number
+		again := false
+		for k, part := range parts {
+			x := &p.of[part.index]
+			factors[k] = x.lo
+			if ends>>k&1 == 1 {
+				factors[k] = x.hi
+				again = again || x.lo == x.hi
 			}
 		}
-		return lo, hi
-	}
-	from, to := min(max(x.lo, item.from), item.to), min(max(x.hi, item.from), item.to)
-	take(item.weightOf(from))
-	take(item.weightOf(to))
-	// Within a band the weight is monotone, so its ends are where each band starts.
-	for _, floor := range item.floors {
-		if floor > from && floor <= to {
-			take(item.weightOf(floor))
-			take(item.weightOf(floor - 1))
+		if !again {
+			n := product(decimals, factors[:len(parts)]...)
+			lo, hi = min(lo, n), max(hi, n)
 		}
 	}
 	return lo, hi
 }
 
-// may asks a test of a set of values.
-func (t *test) may(x *possible) Truth {
-	all := x.states
-	hit := stateSet(0) // the states in which the test holds for certain or perhaps
-	given := Not
-	switch t.kind {
-	case IsUnknown:
-		hit = set(StatedUnknown)
-	case ToldOnly:
-		given = x.told
-	case Is, OneOf:
-		hit = t.states
-		given = t.mayNamed(x)
-	case IsNot:
-		given = Sure - t.mayNamed(x)
+// weightRange is the range of log-odds that an item may still add.
+func (item *Item) weightRange(x *possible) (lo, hi LogOdds) {
+	lo, hi = maxLogOdds, -maxLogOdds
+	for _, r := range reservedStates {
+		if n := item.stateAttribute(r.state); n >= 0 && x.states.has(r.state) {
+			lo, hi = min(lo, item.weights[n]), max(hi, item.weights[n])
+		}
+	}
+	switch {
+	case !x.states.has(Given):
+	case item.slope.Digits != 0:
+		l, h := item.numberRange(x.lo, x.hi)
+		lo, hi = min(lo, l), max(hi, h)
 	default:
-		given = within(x, t.lo, t.hi)
-		if t.hi == Largest && (t.kind == Above || t.kind == AtLeast) {
-			hit = set(IsNothingLeft)
+		for i, w := range item.weights {
+			if x.attrs>>i&1 != 0 {
+				lo, hi = min(lo, w), max(hi, w)
+			}
 		}
 	}
-	result, first := Not, true
-	merge := func(u Truth) {
-		if first {
-			result, first = u, false
-			return
-		}
-		result = result.either(u)
-	}
-	for _, s := range [...]State{StatedUnknown, IsNotApplicable, IsNothingLeft} {
-		if all.has(s) {
-			merge(truth(hit.has(s)))
-		}
-	}
-	if all.has(Given) {
-		merge(given)
-	}
-	return result
+	return lo, hi
 }
 
-func (t *test) mayNamed(x *possible) Truth {
-	if t.among == 0 {
-		return within(x, t.lo, t.hi)
+// maxLogOdds is above all log-odds of an item.
+const maxLogOdds = 4 * largestLogOdds
+
+// numberRange is the range of log-odds of the numbers from lo to hi. Within a
+// band they are monotone, so their ends are where a band starts or ends.
+func (item *Item) numberRange(from, to Number) (lo, hi LogOdds) {
+	from, to = item.clamp(from), item.clamp(to)
+	lo, hi = item.weightOf(from), item.weightOf(from)
+	take := func(n Number) {
+		w := item.weightOf(n)
+		lo, hi = min(lo, w), max(hi, w)
 	}
-	switch {
-	case x.attrs&t.among == 0:
-		return Not
-	case x.attrs&^t.among == 0:
-		return Sure
+	take(to)
+	for _, floor := range item.floors {
+		if floor > from && floor <= to {
+			take(floor)
+			take(floor - 1)
+		}
 	}
-	return Perhaps
+	return lo, hi
 }
 
-func within(x *possible, lo, hi Number) Truth {
-	switch {
-	case x.hi < lo || x.lo > hi:
-		return Not
-	case lo <= x.lo && x.hi <= hi:
-		return Sure
+// single is the one value of a set, where it has but one.
+func (p *possible) single(item *Item) (value, bool) {
+	for _, r := range reservedStates {
+		if p.states == set(r.state) {
+			return value{state: r.state, attr: int8(item.stateAttribute(r.state))}, true
+		}
 	}
-	return Perhaps
+	if p.states != set(Given) {
+		return value{}, false
+	}
+	if item.isChoice() {
+		n := bits.TrailingZeros64(p.attrs)
+		return value{state: Given, attr: int8(n)}, bits.OnesCount64(p.attrs) == 1
+	}
+	return value{state: Given, n: p.lo, attr: int8(item.bandOf(p.lo))}, p.lo == p.hi
 }

@@ -1,7 +1,6 @@
 package model
 
 import (
-	"slices"
 	"strings"
 	"unicode"
 
@@ -52,43 +51,40 @@ func words(text string) []string {
 	return strings.FieldsFunc(plain, func(r rune) bool { return !unicode.IsLetter(r) })
 }
 
-// protectedBy gives the ground by which an item looks protected, through what
-// it is computed from too, or empty. Amount and term are never.
-func (c *compiler) protectedBy(item *Item) string {
-	if item.Code == Amount || item.Code == Term {
-		return ""
-	}
-	if item.Operation == AgeAtLastPayment {
-		return "age"
-	}
-	if ground := looksProtected(&item.Characteristic); ground != "" {
-		return ground
-	}
-	for _, p := range item.parts {
-		part := &c.e.items[p.index]
-		if part.Kind == Computed && !slices.Contains(c.e.order, p.index) {
-			continue // part of a circle, listed already
-		}
-		if part.Use == Watched {
-			return "watched"
-		}
-		if ground := c.protectedBy(part); ground != "" {
-			return ground
+// findGrounds finds the ground by which each item looks protected, through
+// what it is computed from too. Amount and term are never.
+func (c *compiler) findGrounds() {
+	c.grounds = make([]string, len(c.e.items))
+	for i := range c.e.items {
+		item := &c.e.items[i]
+		switch {
+		case item.Code == Amount || item.Code == Term:
+		case item.Operation == AgeAtLastPayment:
+			c.grounds[i] = "age"
+		default:
+			c.grounds[i] = looksProtected(&item.Characteristic)
 		}
 	}
-	return ""
+	for _, i := range c.e.order {
+		for _, p := range c.e.items[i].parts {
+			switch {
+			case c.grounds[i] != "":
+			case c.e.items[p.index].Use == Watched:
+				c.grounds[i] = "watched"
+			default:
+				c.grounds[i] = c.grounds[p.index]
+			}
+		}
+	}
 }
 
 // protected refuses to score what looks protected without a lawful ground.
 func (c *compiler) protected() {
-	for i := range c.e.items {
-		item := &c.e.items[i]
-		if item.Use != Scored || item.LawfulGround != "" {
-			continue
-		}
-		if ground := c.protectedBy(item); ground != "" {
+	c.findGrounds()
+	for _, i := range c.e.scored {
+		if item := &c.e.items[i]; item.LawfulGround == "" && c.grounds[i] != "" {
 			c.add(Problem{Code: "protected_scored", Place: at("Characteristics", c.row(item), "Use"),
-				Args: Args{"value": item.Code, "ground": ground}})
+				Args: Args{"value": item.Code, "ground": c.grounds[i]}})
 		}
 	}
 }

@@ -9,7 +9,7 @@ import (
 // development average: its part of the balance.
 type Step struct {
 	Index     int // of the item
-	Attribute int // place among Item.Attributes, -1 where there is none
+	Attribute int // place among Item.Attributes, -1 where it has none or is open
 	State     State
 	// LogOdds is what the answer adds to the sum; Average is what the
 	// development sample's answers added on average.
@@ -26,49 +26,22 @@ func (s Step) Above() LogOdds { return s.LogOdds - s.Average }
 func (s Step) Open() bool { return s.Lowest != s.Highest }
 
 // Steps are the parts of the sum in the workbook's order, for answers complete
-// or not. Centre plus every step's Above is the log-odds.
+// or not. Of complete answers, Centre plus every step's Above is the log-odds.
 func (e *Edition) Steps(a *Answers) []Step {
 	var p possibles
 	e.spread(a, &p)
-	var steps []Step
-	for i := range e.items {
+	steps := make([]Step, len(e.scored))
+	for n, i := range e.scored {
 		item := &e.items[i]
-		if item.Use != Scored {
-			continue
+		s := Step{Index: i, Attribute: -1, Average: item.AverageLogOdds.Value}
+		s.Lowest, s.Highest = item.weightRange(&p.of[i])
+		s.LogOdds = min(max(s.Average, s.Lowest), s.Highest)
+		if x, ok := p.of[i].single(item); ok {
+			s.Attribute, s.State = int(x.attr), x.state
 		}
-		s := Step{Index: i, Attribute: -1, Average: item.AverageLogOdds.Or(0)}
-		s.Lowest, s.Highest = item.weightRange(&p[i])
-		s.LogOdds = s.Lowest
-		if s.Open() {
-			s.LogOdds = min(max(s.Average, s.Lowest), s.Highest)
-		}
-		if x, ok := p[i].single(item); ok {
-			s.Attribute, s.State = item.attributeOf(x), x.state
-		}
-		steps = append(steps, s)
+		steps[n] = s
 	}
 	return steps
-}
-
-// single is the one value of a set, where it has but one.
-func (p *possible) single(item *Item) (value, bool) {
-	for _, s := range [...]State{StatedUnknown, IsNotApplicable, IsNothingLeft} {
-		if p.states == set(s) {
-			return value{state: s}, true
-		}
-	}
-	if p.states != set(Given) {
-		return value{}, false
-	}
-	if item.Kind == Choice || item.Kind == YesNo {
-		for n := range item.Attributes {
-			if p.attrs == 1<<n {
-				return value{state: Given, attr: n}, true
-			}
-		}
-		return value{}, false
-	}
-	return value{state: Given, n: p.lo}, p.lo == p.hi
 }
 
 // Centre is the middle of the balance: the constant and every scored
@@ -76,10 +49,8 @@ func (p *possible) single(item *Item) (value, bool) {
 // rate: an average of log-odds never is.
 func (e *Edition) Centre() LogOdds {
 	sum := e.constant
-	for i := range e.items {
-		if e.items[i].Use == Scored {
-			sum += e.items[i].AverageLogOdds.Or(0)
-		}
+	for _, i := range e.scored {
+		sum += e.items[i].AverageLogOdds.Value
 	}
 	return sum
 }
@@ -89,29 +60,27 @@ func (e *Edition) Centre() LogOdds {
 // to help.
 const MostReasons = 4
 
-// Reasons are the scored characteristics that speak most against complete
-// answers: those whose log-odds lie furthest above their development average,
-// strictly above, at most MostReasons, ties in the workbook's order. Where a
-// rule declined, the reason is that rule instead: see Result.Fired.
+// Reasons are the scored characteristics that speak most against the answers:
+// those whose log-odds lie furthest above their development average, at most
+// MostReasons, ties in the workbook's order. One at the average or below is
+// never a reason, however few are left: it did not speak against anybody. An
+// open one is none either. Where a rule declined, the reason is that rule
+// instead: see Result.Fired and DecliningRules.
 func (e *Edition) Reasons(a *Answers) []Step {
-	var list []Step
-	for _, s := range e.Steps(a) {
-		if !s.Open() && s.Above() > 0 {
-			list = append(list, s)
-		}
-	}
+	list := slices.DeleteFunc(e.Steps(a), func(s Step) bool { return s.Open() || s.Above() <= 0 })
 	slices.SortStableFunc(list, func(a, b Step) int { return cmp.Compare(b.Above(), a.Above()) })
 	return list[:min(len(list), MostReasons)]
 }
 
-// DecliningRules are the rules in a set whose effect is to decline, in the
-// workbook's order.
-func (e *Edition) DecliningRules(set RuleSet) []PolicyRule {
-	var list []PolicyRule
-	for i := range e.rules {
-		if set.Has(i) && e.rules[i].Effect == DeclineEffect {
-			list = append(list, e.rules[i].PolicyRule)
-		}
+// ReasonText is what the workbook would have the applicant told of a step: the
+// attribute's reason, else the slope's; empty where it gives none.
+func (e *Edition) ReasonText(s Step) string {
+	item := &e.items[s.Index]
+	if s.Attribute >= 0 && item.Attributes[s.Attribute].Reason != "" {
+		return item.Attributes[s.Attribute].Reason
 	}
-	return list
+	if s.State == Given {
+		return item.slopeReason
+	}
+	return ""
 }

@@ -168,7 +168,7 @@ func setCell(v reflect.Value, c Column, text string) error {
 		v.SetBool(text == Yes)
 		return nil
 	}
-	v.SetString(text)
+	v.SetString(plainText(text))
 	return nil
 }
 

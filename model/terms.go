@@ -3,6 +3,7 @@ package model
 import (
 	"errors"
 	"strconv"
+	"time"
 
 	"weighhouse/model/loan"
 )
@@ -18,18 +19,25 @@ func (c *compiler) terms() {
 		return
 	}
 	c.e.minor = Number(pow10[MostDecimals-int(t.MoneyDecimals)])
-	positive := func(column string, n Number) {
-		if n <= 0 {
-			bad(column, "not_above_zero", nil)
-		} else if n%c.e.minor != 0 {
-			bad(column, "too_many_decimals", Args{"value": n.String(), "most": strconv.Itoa(int(t.MoneyDecimals))})
+	for _, m := range []struct {
+		column string
+		value  Number
+		least  Number
+	}{
+		{"Smallest amount", t.SmallestAmount, 1},
+		{"Largest amount", t.LargestAmount, 1},
+		{"Amount step", t.AmountStep, 1},
+		{"Payment rounded up to", t.PaymentRoundedTo.Or(One), 1},
+		{"Fee amount", t.FeeAmount.Or(0), 0},
+	} {
+		switch {
+		case m.value < m.least && m.least > 0:
+			bad(m.column, "not_above_zero", nil)
+		case m.value < m.least:
+			bad(m.column, "below_zero", nil)
+		case m.value%c.e.minor != 0:
+			bad(m.column, "too_many_decimals", Args{"value": m.value.String(), "most": strconv.Itoa(int(t.MoneyDecimals))})
 		}
-	}
-	positive("Smallest amount", t.SmallestAmount)
-	positive("Largest amount", t.LargestAmount)
-	positive("Amount step", t.AmountStep)
-	if t.PaymentRoundedTo.Set {
-		positive("Payment rounded up to", t.PaymentRoundedTo.Value)
 	}
 	if t.SmallestAmount > t.LargestAmount {
 		bad("Largest amount", "limits_crossed", Args{"value": t.LargestAmount.String(), "expected": t.SmallestAmount.String()})
@@ -39,6 +47,12 @@ func (c *compiler) terms() {
 	}
 	if t.ShortestTerm > t.LongestTerm {
 		bad("Longest term", "limits_crossed", Args{"value": strconv.Itoa(int(t.LongestTerm)), "expected": strconv.Itoa(int(t.ShortestTerm))})
+	}
+	if g := t.LongestGrace; g.Set && g.Value >= max(t.LongestTerm, 1) {
+		bad("Longest grace", "more_than", Args{"value": strconv.Itoa(int(g.Value)), "most": strconv.Itoa(int(t.LongestTerm) - 1)})
+	}
+	if n := c.loansToTry(); n > MostLoansToTry {
+		bad("Amount step", "amount_step_too_small", Args{"value": strconv.FormatInt(n, 10), "most": strconv.Itoa(MostLoansToTry)})
 	}
 	if t.Rate >= 1_000_000_000 {
 		c.warn(Problem{Code: "rate_above_one", Place: at("Terms", 0, "Rate"), Args: Args{"value": t.Rate.String()}})
@@ -50,20 +64,51 @@ func (c *compiler) terms() {
 		Rate:        loan.Rate(t.Rate),
 		Per:         loan.Per(t.RatePer),
 		FeeRate:     loan.Rate(t.FeeRate.Or(0)),
-		FeeAmount:   int64(t.FeeAmount.Or(0) / c.e.minor),
+		FeeAmount:   int64(max(t.FeeAmount.Or(0), 0) / c.e.minor),
 		SavingsRate: loan.Rate(t.SavingsRate.Or(0)),
-		PaymentStep: int64(t.PaymentRoundedTo.Or(0) / c.e.minor),
+		PaymentStep: int64(max(t.PaymentRoundedTo.Or(0), 0) / c.e.minor),
 	}, max(int(t.LongestTerm), 1))
-	var p loan.Problem
-	switch {
-	case err == nil:
-		c.e.plan = plan
-	case errors.As(err, &p) && p.Code == loan.OutOfRange:
-		column := map[string]string{"Rate": "Rate", "FeeRate": "Fee rate", "FeeAmount": "Fee amount",
-			"SavingsRate": "Forced savings rate", "PaymentStep": "Payment rounded up to", "longest": "Longest term"}[p.Item]
-		bad(column, p.Code, Args{"value": strconv.FormatInt(p.Value, 10), "most": strconv.FormatInt(p.Most, 10)})
+	if err != nil {
+		c.refuseLoan(err, map[string]string{"Rate": "Rate", "FeeRate": "Fee rate", "SavingsRate": "Forced savings rate", "longest": "Longest term"})
+		return
 	}
-	// A word that is none of the list was listed when the cell was read.
+	c.e.plan = plan
+	if c.refused() {
+		return
+	}
+	// The extremes of the product must be loans; then so are all between.
+	_, err = plan.Schedule(c.e.minorUnits(t.SmallestAmount), int(t.ShortestTerm), 0, time.Time{})
+	c.refuseLoan(err, map[string]string{"amount": "Smallest amount"})
+	_, err = plan.Schedule(c.e.minorUnits(t.LargestAmount), int(t.LongestTerm), 0, time.Time{})
+	c.refuseLoan(err, map[string]string{"amount": "Largest amount"})
+}
+
+// refuseLoan lists what package loan refuses, in the column of its item. A
+// word that it does not know was listed when the cell was read.
+func (c *compiler) refuseLoan(err error, columns map[string]string) {
+	var p loan.Problem
+	if errors.As(err, &p) && p.Code != loan.UnknownWord {
+		c.add(Problem{Code: p.Code, Place: at("Terms", 0, columns[p.Item]),
+			Args: Args{"value": strconv.FormatInt(p.Value, 10), "most": strconv.FormatInt(p.Most, 10)}})
+	}
+}
+
+// MostLoansToTry is how many amounts and terms a product may offer, so that
+// all of them can be tried for one that fits.
+const MostLoansToTry = 1_000_000
+
+// loansToTry counts the amounts and terms of the product.
+func (c *compiler) loansToTry() int64 {
+	t := c.s.Terms
+	if t.AmountStep <= 0 || t.LargestAmount < t.SmallestAmount || t.LongestTerm < t.ShortestTerm {
+		return 0
+	}
+	amounts := int64((t.LargestAmount-t.SmallestAmount)/t.AmountStep) + 1
+	terms := int64(t.LongestTerm-t.ShortestTerm) + 1
+	if amounts > MostLoansToTry {
+		return amounts // the product may not fit
+	}
+	return amounts * terms
 }
 
 // minorUnits is money in the smallest unit, what is finer left off.
@@ -83,8 +128,8 @@ func (e *Edition) periods(term Number) int {
 	return int(min(max(term/One, 1), Number(e.card.Terms.LongestTerm)))
 }
 
-// instalment is one payment of a loan; Largest where it is beyond counting,
-// and 0 for no loan.
+// instalment is one payment of a loan; 0 for no loan, and Largest where there
+// is no such loan: beyond counting, or with nothing left of it after fees.
 func (e *Edition) instalment(amount, term Number) Number {
 	if amount < e.minor {
 		return 0
@@ -96,14 +141,24 @@ func (e *Edition) instalment(amount, term Number) Number {
 	return e.money(payment)
 }
 
-// instalmentRange tries every term that is still possible: a longer one need
-// not have the lower payment.
-func (e *Edition) instalmentRange(amount, term possible) (lo, hi Number) {
-	lo = Largest
-	for n := e.periods(term.lo); n <= e.periods(term.hi); n++ {
-		lo = min(lo, e.instalment(amount.lo, Whole(int64(n))))
-		hi = max(hi, e.instalment(amount.hi, Whole(int64(n))))
+// instalmentRange is the range of an instalment over the amounts and terms
+// that are still possible. Of an open amount it is all there is: an amount
+// need not even leave anything to pay out. For a known one it tries every
+// term: a longer one need not have the lower payment.
+func (e *Edition) instalmentRange(p *possibles, amount, term int) (lo, hi Number) {
+	x, y := &p.of[amount], &p.of[term]
+	if x.lo < x.hi {
+		return 0, Largest
 	}
+	if p.loan.amount == x.lo && p.loan.term == [2]Number{y.lo, y.hi} {
+		return p.loan.payment[0], p.loan.payment[1]
+	}
+	lo = Largest
+	for n := e.periods(y.lo); n <= e.periods(y.hi); n++ {
+		payment := e.instalment(x.lo, Whole(int64(n)))
+		lo, hi = min(lo, payment), max(hi, payment)
+	}
+	p.loan.amount, p.loan.term, p.loan.payment = x.lo, [2]Number{y.lo, y.hi}, [2]Number{lo, hi}
 	return lo, hi
 }
 
@@ -129,6 +184,6 @@ func (e *Edition) Money(minor int64) Number { return e.money(minor) }
 
 // AmountAndTerm are what the answers ask for; ok is false while one is missing.
 func (a *Answers) AmountAndTerm() (amount Number, term int, ok bool) {
-	x, y := a.given[a.edition.byCode[Amount]], a.given[a.edition.byCode[Term]]
-	return x.Number, int(y.Number / One), x.State == Given && y.State == Given
+	x, y := a.values[a.edition.byCode[Amount]], a.values[a.edition.byCode[Term]]
+	return x.n, int(y.n / One), x.state == Given && y.state == Given
 }
