@@ -3,7 +3,7 @@
 cd "$(dirname "${BASH_SOURCE[0]}")/.." || exit 1
 
 # Without a locale the window's library logs an error at every start.
-case "${LC_ALL:-${LANG:-}}" in '' | C | POSIX) export LANG=C.UTF-8 ;; esac
+case "${LC_ALL:-${LANG:-}}" in '' | C | POSIX) export LANG=en_GB.UTF-8 ;; esac
 
 window_packages="gcc libgl1-mesa-dev libx11-dev libxcursor-dev libxrandr-dev libxinerama-dev libxi-dev libxxf86vm-dev"
 test_packages="xvfb xauth xdotool openbox libgl1-mesa-dri imagemagick strace libreoffice-calc-nogui gnumeric"

@@ -29,6 +29,7 @@ type balance struct {
 	rows    []balanceRow
 	centre  float64 // log-odds
 	chosen  int     // -1 for none
+	keys    keys
 	focused bool
 }
 
@@ -117,7 +118,7 @@ func answerWords(r *words.Reader, l *words.Labels, item *model.Item, s model.Ste
 	}
 	switch {
 	case item.Kind == model.YesNo && s.Attribute >= 0:
-		return r.T("answer." + item.Attributes[s.Attribute].Code)
+		return r.T("yes_no." + item.Attributes[s.Attribute].Code)
 	case item.Kind != model.Computed && a.At(item.Index).State == model.Given:
 		return r.Number(a.At(item.Index).Number, int(item.Decimals)) + " " + l.Unit(item)
 	}
@@ -136,6 +137,9 @@ func (b *balance) MouseIn(e *desktop.MouseEvent) { b.MouseMoved(e) }
 func (b *balance) MouseOut()                     {}
 
 func (b *balance) TypedKey(e *fyne.KeyEvent) {
+	if b.keys.take(e) {
+		return
+	}
 	switch e.Name {
 	case fyne.KeyDown:
 		b.choose(min(b.chosen+1, len(b.rows)-1))

@@ -3,8 +3,10 @@ package desk
 import (
 	"slices"
 	"strings"
+	"time"
 
 	"weighhouse/model"
+	"weighhouse/store"
 )
 
 // An interview is one applicant at the desk: the answers so far and what the
@@ -24,6 +26,11 @@ type interview struct {
 	// handedIn tells that the officer has ended the interview; an answer that
 	// changes afterwards takes that back.
 	handedIn bool
+
+	kept        store.Kept // the result last kept; its ID is 0 before the first
+	keptText    string     // the answers that it was kept with
+	savedAt     time.Time
+	saveProblem string
 }
 
 func newInterview(e *model.Edition, today model.Date, client model.ClientKind) *interview {
@@ -37,6 +44,37 @@ func (iv *interview) put(index int, answer model.Answer) {
 	iv.answers.Put(index, answer)
 	iv.wrong[index] = iv.edition.CheckAnswer(iv.answers, index)
 	iv.handedIn = false
+	iv.weigh()
+}
+
+// judge tells what stands against an answer before it counts.
+func (iv *interview) judge(index int, answer model.Answer) []model.Problem {
+	try := iv.answers.Clone()
+	try.Put(index, answer)
+	return iv.edition.CheckAnswer(try, index)
+}
+
+// carry takes over what was answered in another edition, wherever this one
+// asks the same and takes the answer.
+func (iv *interview) carry(from *interview) {
+	for i, item := range from.edition.Items() {
+		mine, ok := iv.edition.Item(item.Code)
+		given := from.answers.At(i)
+		if !ok || mine.Kind != item.Kind || item.Kind == model.Computed || given.State == model.Missing {
+			continue
+		}
+		if answer, err := iv.edition.ParseAnswer(mine.Index, from.edition.AnswerText(i, given)); err == nil {
+			answer.Seen = given.Seen
+			iv.answers.Put(mine.Index, answer)
+		}
+	}
+}
+
+// weighAll weighs anew after many answers have changed.
+func (iv *interview) weighAll() {
+	for i := range iv.wrong {
+		iv.wrong[i] = iv.edition.CheckAnswer(iv.answers, i)
+	}
 	iv.weigh()
 }
 

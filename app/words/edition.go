@@ -37,7 +37,8 @@ func LabelsOf(e *model.Edition, language string) *Labels {
 	return l
 }
 
-func (l *Labels) text(code, otherwise string) string {
+// Text is the lender's own wording of a code, or otherwise.
+func (l *Labels) Text(code, otherwise string) string {
 	if t := l.words[code]; t != "" {
 		return t
 	}
@@ -48,26 +49,26 @@ func (l *Labels) text(code, otherwise string) string {
 func (l *Labels) Of(code string) string { return l.words[code] }
 
 // Product names the product.
-func (l *Labels) Product() string { return l.text("product", l.edition.Scorecard().Card.Product) }
+func (l *Labels) Product() string { return l.Text("product", l.edition.Scorecard().Card.Product) }
 
 // Title is the edition's title.
-func (l *Labels) Title() string { return l.text("title", l.edition.Scorecard().Card.Title) }
+func (l *Labels) Title() string { return l.Text("title", l.edition.Scorecard().Card.Title) }
 
 // Section names the part of the form that an item belongs to.
-func (l *Labels) Section(i *model.Item) string { return l.text("section."+i.Section, i.Section) }
+func (l *Labels) Section(i *model.Item) string { return l.Text("section."+i.Section, i.Section) }
 
 // Question is what is asked, or for a computed item what it is. Amount and
 // term, where the workbook does not word them, are for the caller to word.
-func (l *Labels) Question(i *model.Item) string { return l.text(i.Code, i.Question) }
+func (l *Labels) Question(i *model.Item) string { return l.Text(i.Code, i.Question) }
 
 // Unit is what a number is counted in.
-func (l *Labels) Unit(i *model.Item) string { return l.text(i.Code+".unit", i.Unit) }
+func (l *Labels) Unit(i *model.Item) string { return l.Text(i.Code+".unit", i.Unit) }
 
 // Help explains the question.
-func (l *Labels) Help(i *model.Item) string { return l.text(i.Code+".help", i.Help) }
+func (l *Labels) Help(i *model.Item) string { return l.Text(i.Code+".help", i.Help) }
 
 // Papers says which papers are accepted.
-func (l *Labels) Papers(i *model.Item) string { return l.text(i.Code+".papers", i.PapersAccepted) }
+func (l *Labels) Papers(i *model.Item) string { return l.Text(i.Code+".papers", i.PapersAccepted) }
 
 // Attribute is the label of an item's attribute by its place; empty where
 // there is none, as with a yes or no that the workbook does not word.
@@ -76,7 +77,7 @@ func (l *Labels) Attribute(i *model.Item, n int) string {
 		return ""
 	}
 	a := i.Attributes[n]
-	return l.text(i.Code+"."+a.Code, a.Label)
+	return l.Text(i.Code+"."+a.Code, a.Label)
 }
 
 // Reason is what an applicant is told of an attribute that spoke against.
@@ -85,7 +86,7 @@ func (l *Labels) Reason(i *model.Item, n int) string {
 		return l.Question(i)
 	}
 	a := i.Attributes[n]
-	reason := l.text(i.Code+"."+a.Code+".reason", a.Reason)
+	reason := l.Text(i.Code+"."+a.Code+".reason", a.Reason)
 	if reason == "" {
 		return strings.Join([]string{l.Question(i), l.Attribute(i, n)}, ": ")
 	}
@@ -94,19 +95,19 @@ func (l *Labels) Reason(i *model.Item, n int) string {
 
 // Line is the label of one line of a worksheet.
 func (l *Labels) Line(i *model.Item, n int) string {
-	return l.text(i.Code+".line."+i.Lines[n].Code, i.Lines[n].Label)
+	return l.Text(i.Code+".line."+i.Lines[n].Code, i.Lines[n].Label)
 }
 
 // Band is the label of a band by its place, and the caution that stands by it.
 func (l *Labels) Band(n int) (label, caution string) {
 	b := l.edition.Scorecard().Bands[n]
-	return l.text("band."+b.Code, b.Label), l.text("band."+b.Code+".caution", b.Caution)
+	return l.Text("band."+b.Code, b.Label), l.Text("band."+b.Code+".caution", b.Caution)
 }
 
 // Rule is the label of a policy rule, and its text.
 func (l *Labels) Rule(r model.PolicyRule) (label, text string) {
-	return l.text("rule."+r.Code, r.Label), l.text("rule."+r.Code+".text", r.Text)
+	return l.Text("rule."+r.Code, r.Label), l.Text("rule."+r.Code+".text", r.Text)
 }
 
 // Override is the label of a reason for departing from the recommendation.
-func (l *Labels) Override(o model.Override) string { return l.text("override."+o.Code, o.Label) }
+func (l *Labels) Override(o model.Override) string { return l.Text("override."+o.Code, o.Label) }

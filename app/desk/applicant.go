@@ -1,0 +1,116 @@
+package desk
+
+import (
+	"context"
+
+	"fyne.io/fyne/v2"
+
+	"weighhouse/model"
+)
+
+// The rows above the questions: who it is, whether they are known, and which
+// product. They decide the edition.
+
+func (p *interviewPage) applicantRows(list *fyne.Container) {
+	d := p.desk
+	list.Add(p.sectionHead(d.reader.T("desk.applicant")))
+
+	name := newNameBox(d.reader, d.key, 300)
+	name.putText(p.iv.who)
+	name.on().done = func() { p.kind.box.focus() }
+	name.heard = func(text string) {
+		p.iv.who = text
+		p.strip.show(p.iv)
+	}
+	p.who = newRow("", d.reader.T("desk.who"), d.reader.T("desk.who_help"), name, nil)
+	name.on().gained = func() { p.current(p.who) }
+	if d.hidden {
+		name.putText("")
+		name.Disable()
+	}
+
+	kinds := []model.ClientKind{model.NewClients, model.RepeatClients}
+	kind := newPicker(d.reader, d.key, options(d.reader.Name(kinds[0]), d.reader.Name(kinds[1])))
+	kind.put(optionAnswer(indexOf(kinds, p.iv.answers.Client)))
+	p.kind = newRow("", d.reader.T("desk.client"), "", kind, nil)
+	kind.on().gained = func() { p.current(p.kind) }
+	kind.on().done = func() { p.what.box.focus() }
+	kind.on().changed = func(a model.Answer) {
+		if a.State == model.Given {
+			p.change(p.iv.edition.Scorecard().Card.ProductCode, kinds[a.Attribute])
+		}
+	}
+
+	products, _ := d.products(p.iv.today)
+	var labels, codes []string
+	for _, r := range products {
+		label := r.Card.Product
+		if e, err := d.session.Edition(context.Background(), r.Fingerprint); err == nil {
+			label = d.labels(e).Product()
+		}
+		labels, codes = append(labels, label), append(codes, r.Card.ProductCode)
+	}
+	what := newPicker(d.reader, d.key, options(labels...))
+	what.put(optionAnswer(indexOf(codes, p.iv.edition.Scorecard().Card.ProductCode)))
+	p.what = newRow("", d.reader.T("desk.product"), "", what, nil)
+	what.on().gained = func() { p.current(p.what) }
+	what.on().done = func() { p.goOn(-1) }
+	what.on().changed = func(a model.Answer) {
+		if a.State == model.Given {
+			p.change(codes[a.Attribute], p.iv.answers.Client)
+		}
+	}
+	for _, r := range []*row{p.who, p.kind, p.what} {
+		list.Add(r)
+	}
+}
+
+// options are those of a picker that is no characteristic's.
+func options(labels ...string) []option {
+	list := make([]option, len(labels))
+	for i, label := range labels {
+		list[i] = option{label: label, answer: optionAnswer(i)}
+	}
+	return list
+}
+
+func optionAnswer(i int) model.Answer { return model.Answer{State: model.Given, Attribute: i} }
+
+func indexOf[T comparable](list []T, one T) int {
+	for i, x := range list {
+		if x == one {
+			return i
+		}
+	}
+	return 0
+}
+
+// change goes over to the edition of another product or kind of client; what
+// was answered is carried over wherever the new edition asks the same.
+func (p *interviewPage) change(product string, client model.ClientKind) {
+	d := p.desk
+	if product == p.iv.edition.Scorecard().Card.ProductCode && client == p.iv.answers.Client {
+		return
+	}
+	iv, err := d.freshInterview(product, client)
+	if err != nil {
+		p.what.box.line().refuse(d.reader.Error(err))
+		return
+	}
+	iv.who = p.iv.who
+	if iv.edition == p.iv.edition {
+		iv.answers = p.iv.answers.Clone()
+		iv.answers.Client = client
+	} else {
+		iv.carry(p.iv)
+	}
+	iv.weighAll()
+	d.interview = iv
+	next := newInterviewPage(d).(*interviewPage)
+	d.open(next)
+	if product != p.iv.edition.Scorecard().Card.ProductCode {
+		next.what.box.focus()
+	} else {
+		next.kind.box.focus()
+	}
+}

@@ -1,0 +1,170 @@
+// Package desk is the window: a file a page, a file a widget. It asks store
+// and model for everything and draws what they say; no rule lives here.
+package desk
+
+import (
+	"context"
+	"os"
+	"path/filepath"
+	"sync"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/theme"
+
+	"weighhouse/app/practice"
+	"weighhouse/app/words"
+	"weighhouse/model"
+	"weighhouse/store"
+)
+
+// Options are what the command line may say.
+type Options struct {
+	Practice bool
+	Folder   string // of the desk's file; empty for a folder of the user's own
+	Language string // empty for as last time
+}
+
+// A Desk is the window with a person signed in and one page showing.
+type Desk struct {
+	app     fyne.App
+	window  fyne.Window
+	session *store.Session
+	reader  *words.Reader
+	dark    bool
+	hidden  bool
+	// post runs a change of the window: fyne.Do, or in tests at once.
+	post func(func())
+
+	page      page
+	name      string         // of the page, to open it anew
+	saving    sync.WaitGroup // results being written
+	interview *interview     // the application at hand; nil before the first
+	shell     *fyne.Container
+}
+
+// A page fills the window between the banner and the keys.
+type page interface {
+	// object is what it draws; it is asked for once each time the page opens.
+	object() fyne.CanvasObject
+	// opened gives the focus to where the work starts.
+	opened()
+	// key hears a key that nothing on the page used.
+	key(name fyne.KeyName) bool
+}
+
+// Run opens the window and returns when it is closed. shown is called once
+// something has been painted.
+func Run(a fyne.App, o Options, shown func()) error {
+	d := &Desk{app: a, post: fyne.Do}
+	a.Settings().SetTheme(look{})
+	d.window = a.NewWindow("Weighhouse")
+	d.window.Resize(fyne.NewSize(1280, 700))
+	d.window.CenterOnScreen()
+	d.window.SetContent(container.NewWithoutLayout())
+	var failed error
+	a.Lifecycle().SetOnStarted(func() {
+		shown()
+		go func() {
+			session, err := open(o)
+			d.post(func() {
+				if err != nil {
+					failed = err
+					d.refuse(o, err)
+					return
+				}
+				d.begin(session, o)
+			})
+		}()
+	})
+	d.window.ShowAndRun()
+	if d.session != nil {
+		return d.session.Branch().Close()
+	}
+	return failed
+}
+
+// open opens the branch and signs in.
+func open(o Options) (*store.Session, error) {
+	dir := o.Folder
+	if dir == "" {
+		base, err := os.UserConfigDir()
+		if err != nil {
+			return nil, err
+		}
+		dir = filepath.Join(base, "weighhouse", "practice")
+	}
+	return practice.Open(context.Background(), dir)
+}
+
+// begin shows the first page to the person signed in.
+func (d *Desk) begin(session *store.Session, o Options) {
+	d.session = session
+	language := o.Language
+	if language == "" {
+		language = d.remembered("language")
+	}
+	d.reader = words.New(words.StyleOf(language))
+	d.dark = d.remembered("light") == "dark"
+	d.app.Settings().SetTheme(look{d.dark})
+	d.window.SetCloseIntercept(d.close)
+	d.show("interview")
+}
+
+// labels word an edition in the window's language.
+func (d *Desk) labels(e *model.Edition) *words.Labels {
+	return words.LabelsOf(e, d.reader.Style().Language)
+}
+
+// questionOf is what an item asks; amount and term are worded here where the
+// workbook does not.
+func (d *Desk) questionOf(l *words.Labels, item *model.Item) string {
+	if q := l.Question(item); q != "" {
+		return q
+	}
+	return d.reader.T("desk.ask_" + item.Code)
+}
+
+func (d *Desk) remembered(name string) string {
+	value, _ := d.session.Branch().Remembered(context.Background(), name)
+	return value
+}
+
+func (d *Desk) remember(name, value string) {
+	go d.session.Branch().Remember(context.Background(), name, value)
+}
+
+// open shows a page.
+func (d *Desk) open(p page) {
+	d.page = p
+	d.shell = container.NewBorder(d.banner(), d.keyBar(), nil, nil, p.object())
+	d.window.SetContent(d.shell)
+	d.window.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { d.key(e.Name) })
+	p.opened()
+}
+
+// banner marks every page of the practice branch, and names the branch.
+func (d *Desk) banner() fyne.CanvasObject {
+	info := d.session.Branch().Info()
+	ground, text := colorRaised, d.reader.T("shell.branch", "branch", info.Name, "desk", info.Desk)
+	if info.Practice {
+		ground, text = colorNotice, d.reader.T("shell.practice", "branch", info.Name, "desk", info.Desk)
+	}
+	left := figure(theme.CaptionTextSize(), true)
+	setFigure(left, text, theme.ColorNameForeground)
+	right := caption(d.reader.T("shell.person", "person", d.session.Person()))
+	right.Color = shade(theme.ColorNameForeground)
+	return container.NewStack(canvas.NewRectangle(shade(ground)),
+		container.NewPadded(container.NewBorder(nil, nil, left, right)))
+}
+
+// today is the date that the branch goes by, and whether it is doubtful.
+func (d *Desk) today() (model.Date, error) { return d.session.Branch().Today() }
+
+// close keeps what is complete before the window goes.
+func (d *Desk) close() {
+	d.leave()
+	d.saving.Wait()
+	d.window.Close()
+}

@@ -1,0 +1,110 @@
+package desk
+
+import (
+	"strconv"
+	"unicode/utf8"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/widget"
+
+	"weighhouse/model"
+)
+
+// An entry is Fyne's with the manners of a form: Enter is heard, the window's
+// own keys and shortcuts work from inside it, what stands in it is selected
+// when the focus comes, and it holds no more text than it can draw.
+type entry struct {
+	widget.Entry
+	keys keys
+	most int // characters
+	// letter may take a typed character for itself.
+	letter func(rune) bool
+	enter  func()
+	moved  func(gained bool)
+	// full hears that there is no room for what was typed or pasted.
+	full func(model.Problem)
+}
+
+func newEntry(keys keys, most int) *entry {
+	e := &entry{keys: keys, most: most}
+	e.Wrapping = fyne.TextWrap(fyne.TextTruncateClip)
+	e.ExtendBaseWidget(e)
+	return e
+}
+
+// lastEntry had the focus last. When a window comes back to the front Fyne
+// gives the focus anew; then nothing is selected, or the next key would wipe
+// out a half-typed figure.
+var lastEntry *entry
+
+func (e *entry) FocusGained() {
+	e.Entry.FocusGained()
+	if lastEntry != e && !e.MultiLine {
+		e.Entry.TypedShortcut(&fyne.ShortcutSelectAll{})
+	}
+	lastEntry = e
+	if e.moved != nil {
+		e.moved(true)
+	}
+}
+
+func (e *entry) FocusLost() {
+	e.Entry.FocusLost()
+	if e.moved != nil {
+		e.moved(false)
+	}
+}
+
+// AcceptsTab is false: Tab goes on even from several lines.
+func (e *entry) AcceptsTab() bool { return false }
+
+func (e *entry) TypedKey(k *fyne.KeyEvent) {
+	enter := k.Name == fyne.KeyReturn || k.Name == fyne.KeyEnter
+	switch {
+	case e.keys.take(k):
+	case enter && !e.MultiLine && e.enter != nil:
+		e.enter()
+	case enter && e.MultiLine && !e.fits(1):
+	default:
+		e.Entry.TypedKey(k)
+	}
+}
+
+func (e *entry) TypedRune(c rune) {
+	if (e.letter != nil && e.letter(c)) || !e.fits(1) {
+		return
+	}
+	e.Entry.TypedRune(c)
+}
+
+func (e *entry) TypedShortcut(s fyne.Shortcut) {
+	switch s := s.(type) {
+	case *fyne.ShortcutPaste:
+		if !e.fits(utf8.RuneCountInString(s.Clipboard.Content())) {
+			return
+		}
+	case *desktop.CustomShortcut:
+		switch s.KeyName {
+		case fyne.KeyLeft, fyne.KeyRight, fyne.KeyBackspace, fyne.KeyDelete:
+		default:
+			if c, ok := canvasOf(e).(fyne.Shortcutable); ok {
+				c.TypedShortcut(s)
+			}
+			return
+		}
+	}
+	e.Entry.TypedShortcut(s)
+}
+
+// fits tells that there is room for n more characters, and says where not.
+func (e *entry) fits(n int) bool {
+	length := utf8.RuneCountInString(e.Text) - utf8.RuneCountInString(e.SelectedText()) + n
+	if length <= e.most {
+		return true
+	}
+	if e.full != nil {
+		e.full(model.Problem{Code: "text_too_long", Args: model.Args{"length": strconv.Itoa(length), "most": strconv.Itoa(e.most)}})
+	}
+	return false
+}

@@ -1,0 +1,104 @@
+package desk
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+)
+
+// The window's keys, in the order they stand along its foot. Each does the
+// same on every page.
+var windowKeys = []struct {
+	key  fyne.KeyName
+	word string // under "shell." in the words
+}{
+	{fyne.KeyF1, "keys"}, {fyne.KeyF2, "new"}, {fyne.KeyF3, "kept"}, {fyne.KeyF4, "scorecards"},
+	{fyne.KeyF5, "why"}, {fyne.KeyF6, "details"}, {fyne.KeyF7, "fits"}, {fyne.KeyF8, "language"},
+	{fyne.KeyF9, "hide"}, {fyne.KeyF10, "finish"}, {fyne.KeyF11, "light"},
+}
+
+// key does what a key of the window does, and tells whether it is one.
+func (d *Desk) key(name fyne.KeyName) bool {
+	if d.page.key(name) {
+		return true
+	}
+	switch name {
+	case fyne.KeyF1:
+		d.show("keys")
+	case fyne.KeyF2:
+		d.newApplication()
+	case fyne.KeyF3:
+		d.show("kept")
+	case fyne.KeyF4:
+		d.show("scorecards")
+	case fyne.KeyF5:
+		d.show("why")
+	case fyne.KeyF6:
+		d.show("details")
+	case fyne.KeyF7:
+		d.show("fits")
+	case fyne.KeyF8:
+		d.nextLanguage()
+	case fyne.KeyF9:
+		d.hidden = !d.hidden
+		d.redraw()
+	case fyne.KeyF10:
+		d.finish()
+	case fyne.KeyF11:
+		d.dark = !d.dark
+		d.app.Settings().SetTheme(look{d.dark})
+		d.remember("light", map[bool]string{true: "dark", false: "light"}[d.dark])
+		d.redraw()
+	case fyne.KeyEscape:
+		d.show("interview")
+	default:
+		return false
+	}
+	return true
+}
+
+// keyBar names the keys along the foot; a click does what the key does.
+func (d *Desk) keyBar() fyne.CanvasObject {
+	bar := container.New(layout.NewCustomPaddedHBoxLayout(2))
+	for _, k := range windowKeys {
+		bar.Add(newKeyHint(string(k.key), d.reader.T("shell."+k.word), func() { d.key(k.key) }))
+	}
+	return container.NewStack(canvas.NewRectangle(shade(colorBand)), container.NewHScroll(bar))
+}
+
+// A keyHint is a key's name and what it does. It takes a click and never the
+// focus.
+type keyHint struct {
+	widget.BaseWidget
+	name, does *canvas.Text
+	ground     *canvas.Rectangle
+	tapped     func()
+}
+
+func newKeyHint(name, does string, tapped func()) *keyHint {
+	h := &keyHint{name: canvas.NewText(name, shade(theme.ColorNamePrimary)), does: canvas.NewText(does, shade(theme.ColorNameForeground)),
+		ground: canvas.NewRectangle(shade(colorBand)), tapped: tapped}
+	h.name.TextSize, h.name.TextStyle.Bold = 12, true
+	h.does.TextSize = 12
+	h.ExtendBaseWidget(h)
+	return h
+}
+
+func (h *keyHint) Tapped(*fyne.PointEvent)        { h.tapped() }
+func (h *keyHint) MouseIn(*desktop.MouseEvent)    { h.paint(theme.ColorNameHover) }
+func (h *keyHint) MouseOut()                      { h.paint(colorBand) }
+func (h *keyHint) MouseMoved(*desktop.MouseEvent) {}
+
+func (h *keyHint) paint(c fyne.ThemeColorName) {
+	h.ground.FillColor = shade(c)
+	h.ground.Refresh()
+}
+
+func (h *keyHint) CreateRenderer() fyne.WidgetRenderer {
+	row := container.New(layout.NewCustomPaddedHBoxLayout(5), h.name, h.does)
+	return widget.NewSimpleRenderer(container.NewStack(h.ground, container.New(layout.NewCustomPaddedLayout(4, 4, 6, 6), row)))
+}

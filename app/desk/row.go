@@ -1,0 +1,235 @@
+package desk
+
+import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+)
+
+// A row is one question on the page: its number as on the visit form, what is
+// asked, the box, the box's note and, where evidence is asked for, whether a
+// paper was seen. The row whose box has the focus is tinted.
+type row struct {
+	widget.BaseWidget
+	number   string
+	question string
+	help     string
+	box      box
+	evidence *evidence // nil where none is asked for
+	current  bool
+	asked    bool // of this applicant
+}
+
+func newRow(number, question, help string, b box, e *evidence) *row {
+	r := &row{number: number, question: question, help: help, box: b, evidence: e, asked: true}
+	r.ExtendBaseWidget(r)
+	return r
+}
+
+// setCurrent tints the row.
+func (r *row) setCurrent(on bool) {
+	if r.current != on {
+		r.current = on
+		r.Refresh()
+	}
+}
+
+// setAsked greys a question that is not asked of this applicant.
+func (r *row) setAsked(on bool, why string) {
+	if r.asked == on {
+		return
+	}
+	r.asked = on
+	if on {
+		r.box.Enable()
+		r.box.line().hint("")
+	} else {
+		r.box.Disable()
+		r.box.line().hint(why)
+	}
+	r.Refresh()
+}
+
+const (
+	numberWidth   = 30
+	evidenceWidth = 84
+	questionGap   = 4
+	questionLines = 2
+)
+
+func (r *row) CreateRenderer() fyne.WidgetRenderer {
+	v := &questionRenderer{row: r, ground: canvas.NewRectangle(nil), number: canvas.NewText(r.number, nil), help: caption("")}
+	v.number.TextSize, v.number.Alignment = theme.TextSize(), fyne.TextAlignTrailing
+	for range questionLines {
+		v.question = append(v.question, canvas.NewText("", nil))
+	}
+	v.objects = []fyne.CanvasObject{v.ground, v.number, v.help, r.box, r.box.line()}
+	for _, t := range v.question {
+		t.TextSize = theme.TextSize()
+		v.objects = append(v.objects, t)
+	}
+	if r.evidence != nil {
+		v.objects = append(v.objects, r.evidence)
+	}
+	v.paint()
+	return v
+}
+
+type questionRenderer struct {
+	row      *row
+	ground   *canvas.Rectangle
+	number   *canvas.Text
+	question []*canvas.Text
+	help     *canvas.Text
+	objects  []fyne.CanvasObject
+}
+
+func (v *questionRenderer) Objects() []fyne.CanvasObject { return v.objects }
+func (v *questionRenderer) Destroy()                     {}
+
+// MinSize leaves room for the question and its help, or for the box and its
+// note.
+func (v *questionRenderer) MinSize() fyne.Size {
+	_, width, _, _ := v.columns(max(v.row.Size().Width, 480))
+	text := float32(3)
+	for _, line := range wrap(v.row.question, width, theme.TextSize(), fyne.TextStyle{}, questionLines) {
+		if line != "" {
+			text += lineHeight(theme.TextSize())
+		}
+	}
+	if v.row.help != "" {
+		text += lineHeight(theme.CaptionTextSize())
+	}
+	boxed := v.row.box.MinSize().Height + v.row.box.line().MinSize().Height
+	return fyne.NewSize(480, max(text, boxed)+questionGap)
+}
+
+// columns are where the question and the box start and how wide they are.
+func (v *questionRenderer) columns(width float32) (question, questionWidth, boxAt, boxWidth float32) {
+	question = numberWidth + 8
+	rest := width - question - evidenceWidth
+	questionWidth = rest*0.45 - 12
+	boxAt = question + rest*0.45
+	return question, questionWidth, boxAt, rest*0.55 - 8
+}
+
+func (v *questionRenderer) Layout(size fyne.Size) {
+	v.ground.Resize(size)
+	question, questionWidth, boxAt, boxWidth := v.columns(size.Width)
+	line := lineHeight(theme.TextSize())
+	v.number.Move(fyne.NewPos(0, questionGap+3))
+	v.number.Resize(fyne.NewSize(numberWidth, line))
+	used := 0
+	for i, text := range wrap(v.row.question, questionWidth, theme.TextSize(), fyne.TextStyle{}, questionLines) {
+		t := v.question[i]
+		t.Text = text
+		t.Move(fyne.NewPos(question, questionGap+3+line*float32(i)))
+		t.Resize(fyne.NewSize(questionWidth, line))
+		if text != "" {
+			used = i + 1
+		}
+	}
+	v.help.Text = shorten(v.row.help, questionWidth, theme.CaptionTextSize(), fyne.TextStyle{})
+	v.help.Move(fyne.NewPos(question, questionGap+3+line*float32(used)))
+	height := v.row.box.MinSize().Height
+	v.row.box.Move(fyne.NewPos(boxAt, questionGap))
+	v.row.box.Resize(fyne.NewSize(boxWidth, height))
+	note := v.row.box.line()
+	note.Move(fyne.NewPos(boxAt+4, questionGap+height))
+	note.Resize(fyne.NewSize(size.Width-boxAt-8, note.MinSize().Height))
+	if e := v.row.evidence; e != nil {
+		e.Move(fyne.NewPos(size.Width-evidenceWidth, questionGap))
+		e.Resize(fyne.NewSize(evidenceWidth-4, e.MinSize().Height))
+	}
+}
+
+func (v *questionRenderer) paint() {
+	v.ground.FillColor = shade(theme.ColorNameBackground)
+	if v.row.current {
+		v.ground.FillColor = shade(colorCurrent)
+	}
+	ink := theme.ColorNameForeground
+	if !v.row.asked {
+		ink = theme.ColorNameDisabled
+	}
+	v.number.Color = shade(colorQuiet)
+	for _, t := range v.question {
+		t.Color = shade(ink)
+	}
+}
+
+func (v *questionRenderer) Refresh() {
+	v.paint()
+	v.Layout(v.row.Size())
+	canvas.Refresh(v.row)
+}
+
+// evidence shows whether an answer was told or a paper seen; a tap, or the
+// window's key for it, changes it.
+type evidence struct {
+	widget.BaseWidget
+	seen    bool
+	needed  bool // that a paper be seen
+	words   [2]string
+	changed func(seen bool)
+	text    *canvas.Text
+	ground  *canvas.Rectangle
+}
+
+func newEvidence(told, seen string, needed bool, changed func(bool)) *evidence {
+	e := &evidence{words: [2]string{told, seen}, needed: needed, changed: changed,
+		text: canvas.NewText("", nil), ground: canvas.NewRectangle(nil)}
+	e.text.TextSize, e.text.Alignment = theme.CaptionTextSize(), fyne.TextAlignCenter
+	e.ground.CornerRadius, e.ground.StrokeWidth = 9, 1
+	e.ExtendBaseWidget(e)
+	e.paint()
+	return e
+}
+
+// set shows what was kept, without telling.
+func (e *evidence) set(seen bool) {
+	e.seen = seen
+	e.paint()
+}
+
+func (e *evidence) toggle() {
+	e.set(!e.seen)
+	e.changed(e.seen)
+}
+
+func (e *evidence) Tapped(*fyne.PointEvent) { e.toggle() }
+
+func (e *evidence) paint() {
+	e.text.Text, e.ground.FillColor, e.ground.StrokeColor = e.words[0], shade(theme.ColorNameBackground), shade(theme.ColorNameInputBorder)
+	e.text.Color = shade(colorQuiet)
+	switch {
+	case e.seen:
+		e.text.Text, e.text.Color = e.words[1], shade(colorApprove)
+		e.ground.StrokeColor = shade(colorApprove)
+	case e.needed:
+		e.text.Color, e.ground.StrokeColor = shade(theme.ColorNameWarning), shade(theme.ColorNameWarning)
+	}
+	e.text.Text = shorten(e.text.Text, evidenceWidth-14, e.text.TextSize, fyne.TextStyle{})
+	e.text.Refresh()
+	e.ground.Refresh()
+}
+
+func (e *evidence) CreateRenderer() fyne.WidgetRenderer {
+	return &evidenceRenderer{e}
+}
+
+type evidenceRenderer struct{ e *evidence }
+
+func (r *evidenceRenderer) Objects() []fyne.CanvasObject {
+	return []fyne.CanvasObject{r.e.ground, r.e.text}
+}
+func (r *evidenceRenderer) Destroy()           {}
+func (r *evidenceRenderer) Refresh()           { r.e.paint() }
+func (r *evidenceRenderer) MinSize() fyne.Size { return fyne.NewSize(60, 24) }
+func (r *evidenceRenderer) Layout(size fyne.Size) {
+	r.e.ground.Move(fyne.NewPos(0, 3))
+	r.e.ground.Resize(fyne.NewSize(size.Width, 20))
+	r.e.text.Move(fyne.NewPos(0, 4))
+	r.e.text.Resize(fyne.NewSize(size.Width, 18))
+}

@@ -1,0 +1,41 @@
+// Weighhouse opens the window of one desk: flags, the folder its file is kept
+// in, and the window itself. All else is in app/desk.
+package main
+
+import (
+	"flag"
+	"fmt"
+	"os"
+	"strings"
+	"time"
+
+	"fyne.io/fyne/v2/app"
+
+	"weighhouse/app/desk"
+)
+
+func main() {
+	var options desk.Options
+	flag.BoolVar(&options.Practice, "practice", false, "open the practice branch, in which everyone is invented")
+	flag.StringVar(&options.Folder, "folder", "", "the folder of this desk's file (default: a folder of your own)")
+	flag.StringVar(&options.Language, "language", "", "en, fr or es (default: as last time)")
+	flag.Parse()
+	if flag.NArg() > 0 {
+		fmt.Fprintln(os.Stderr, "weighhouse: unexpected:", flag.Args())
+		flag.Usage()
+		os.Exit(2)
+	}
+	// Without a language Fyne logs an error at every start.
+	if lang := os.Getenv("LANG"); os.Getenv("LC_ALL") == "" && (lang == "" || strings.HasPrefix(lang, "C") || lang == "POSIX") {
+		os.Setenv("LANG", "en_GB.UTF-8")
+	}
+	// A machine whose graphics cannot draw would leave an invisible process.
+	watch := time.AfterFunc(10*time.Second, func() {
+		fmt.Fprintln(os.Stderr, "weighhouse: the window could not be drawn: this machine's graphics lack OpenGL 2.1")
+		os.Exit(1)
+	})
+	if err := desk.Run(app.NewWithID("weighhouse.desk"), options, func() { watch.Stop() }); err != nil {
+		fmt.Fprintln(os.Stderr, "weighhouse:", err)
+		os.Exit(1)
+	}
+}
