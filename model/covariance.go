@@ -43,7 +43,7 @@ func (c *compiler) covariance() {
 	// The range would then leave out what that coefficient adds to it.
 	for i, a := range c.s.Attributes {
 		if name := coefficient(a); errors[name] > 0 && !seen[name] {
-			c.warn(Problem{Code: "covariance_lacks", Place: at("Attributes", i+1, "Standard error"), Args: Args{"value": name}})
+			c.add(Problem{Code: "covariance_lacks", Place: at("Attributes", i+1, "Standard error"), Args: Args{"value": name}})
 		}
 	}
 	if good && !semidefinite(v.Values) {
