@@ -58,18 +58,19 @@ func round(decimal string, places, digits int) string {
 	return kept
 }
 
-// firstSureDay is 1 March 1900: spreadsheets disagree about earlier
-// days, because some count a 29 February 1900 that never was.
-const firstSureDay = 61
+// firstDay is 18 March 1908. A smaller number in a cell meant for dates is a
+// year alone that someone typed there; and about the first of them spreadsheets
+// disagree, because some count a 29 February 1900 that never was.
+const firstDay = 3000
 
 // lastDay is 31 December 9999.
 const lastDay = 2_958_465
 
-// dateOf is the date of a day number counted from 30 December 1899; a number
-// that is no sure date stays as it is.
+// dateOf is the date of a day's number, counted from 30 December 1899; any
+// other number stays as it is.
 func dateOf(serial string) string {
 	f, err := strconv.ParseFloat(serial, 64)
-	if err != nil || f < firstSureDay || f >= lastDay+1 {
+	if err != nil || f < firstDay || f >= lastDay+1 {
 		return serial
 	}
 	whole := int(f)
@@ -162,16 +163,21 @@ func readings(s string) (found []string) {
 func reading(s, point string) (string, bool) {
 	number, exponent, _ := strings.Cut(strings.ToUpper(s), "E")
 	whole, fraction, _ := strings.Cut(number, point)
-	sign := whole[:len(whole)-len(strings.TrimLeft(whole, "+-"))]
-	groups := strings.FieldsFunc(whole[len(sign):], func(r rune) bool { return r == ' ' || r == ',' || r == '.' })
-	for i, g := range groups {
-		if i > 0 && len(g) != 3 && (len(g) != 2 || i == len(groups)-1) || len(groups) > 1 && len(g) > 3 {
-			return "", false
+	digits := strings.TrimLeft(whole, "+-")
+	sign := whole[:len(whole)-len(digits)]
+	if mark := strings.IndexAny(digits, " ,."); mark > 0 {
+		groups := strings.Split(digits, digits[mark:mark+1])
+		for i, g := range groups {
+			last := i == len(groups)-1
+			if last && len(g) != 3 || !last && i > 0 && len(g) != 3 && len(g) != 2 || len(g) > 3 {
+				return "", false
+			}
 		}
+		digits = strings.Join(groups, "")
 	}
-	joined := sign + strings.Join(groups, "") + "." + fraction
+	text := sign + digits + "." + fraction
 	if exponent != "" {
-		joined += "E" + exponent
+		text += "E" + exponent
 	}
-	return shortest(joined)
+	return shortest(text)
 }
