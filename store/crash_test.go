@@ -5,6 +5,7 @@ import (
 	"bytes"
 	"context"
 	"fmt"
+	"maps"
 	"math/rand/v2"
 	"os"
 	"os/exec"
@@ -67,7 +68,6 @@ func TestKilledWhileKeeping(t *testing.T) {
 	s.branch.Close()
 	odds, cleared := map[int64]string{}, map[int64]bool{}
 	const rounds = 30
-	killed := 0
 	for round := range rounds {
 		c := child(t, "keep", dir)
 		out := must(c.StdoutPipe())
@@ -90,7 +90,6 @@ func TestKilledWhileKeeping(t *testing.T) {
 		if c.Wait(); c.ProcessState.Exited() {
 			t.Fatal("the child ended by itself")
 		}
-		killed++
 		if wal := must(os.Stat(filepath.Join(dir, FileName+"-wal"))); round == 0 {
 			// Its log is as it was left: answers are sealed there too.
 			content := must(os.ReadFile(filepath.Join(dir, FileName+"-wal")))
@@ -110,10 +109,75 @@ func TestKilledWhileKeeping(t *testing.T) {
 			t.Fatal(err)
 		}
 	}
-	if len(odds) < killed {
-		t.Errorf("%d saved in %d rounds: too few to tell anything", len(odds), killed)
+	if len(odds) < rounds {
+		t.Errorf("%d saved in %d rounds: too few to tell anything", len(odds), rounds)
 	}
-	t.Logf("%d saved over %d kills, none lost", len(odds), killed)
+	t.Logf("%d saved over %d kills, none lost", len(odds), rounds)
+}
+
+// killed is a branch as a killed program left it, with a log that holds what
+// is not yet in the file.
+func killed(t *testing.T) (dir, file string) {
+	t.Helper()
+	dir = t.TempDir()
+	s, _ := practice(t, dir, Options{})
+	s.branch.Close()
+	c := child(t, "keep", dir)
+	out := must(c.StdoutPipe())
+	if err := c.Start(); err != nil {
+		t.Fatal(err)
+	}
+	for n, lines := 0, bufio.NewScanner(out); lines.Scan(); n++ {
+		if n == 10 {
+			c.Process.Kill()
+		}
+	}
+	c.Wait()
+	return dir, filepath.Join(dir, FileName)
+}
+
+// What a log says counts, before SQLite brings it into the file.
+func TestALeftLogIsLookedInto(t *testing.T) {
+	whole, _ := killed(t)
+	t.Run("cut", func(t *testing.T) {
+		dir := copyOf(t, whole)
+		if err := os.Truncate(filepath.Join(dir, FileName), 4096); err != nil {
+			t.Fatal(err)
+		}
+		before := folder(t, dir)
+		_, err := Open(t.Context(), dir, Options{})
+		wantCode(t, err, "truncated")
+		if !maps.Equal(before, folder(t, dir)) {
+			t.Error("touched")
+		}
+	})
+	t.Run("newer", func(t *testing.T) {
+		open := copyOf(t, whole)
+		db := plain(t, open)
+		must(db.Exec("PRAGMA wal_autocheckpoint = 0; PRAGMA user_version = 99"))
+		dir := copyOf(t, open) // as a power cut would leave it
+		db.Close()
+		if err := os.Remove(filepath.Join(dir, FileName+"-shm")); err != nil {
+			t.Fatal(err)
+		}
+		before := folder(t, dir)
+		_, err := Open(t.Context(), dir, Options{})
+		if p := wantCode(t, err, "newer_program"); p.Args["version"] != "99" {
+			t.Error(p)
+		}
+		if !maps.Equal(before, folder(t, dir)) {
+			t.Error("touched")
+		}
+	})
+	t.Run("torn", func(t *testing.T) {
+		dir := copyOf(t, whole)
+		f := must(os.OpenFile(filepath.Join(dir, FileName+"-wal"), os.O_APPEND|os.O_WRONLY, 0))
+		must(f.Write(bytes.Repeat([]byte{0xff}, 9999)))
+		f.Close()
+		if p := proven(t, openPractice(t, dir, Options{})); p.Results < 5 {
+			t.Errorf("%+v", p)
+		}
+	})
 }
 
 func TestAnotherProcessIsToldThatTheBranchIsOpen(t *testing.T) {

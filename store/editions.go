@@ -59,8 +59,8 @@ func refused(problems []model.Problem) bool {
 // editions are all that were released, in that order, read once. An entry or
 // a person that was tampered with hides none: Prove tells of it.
 func (b *Branch) editions(ctx context.Context, q queryer) ([]*released, error) {
-	b.mu.Lock()
-	defer b.mu.Unlock()
+	b.editionsMu.Lock()
+	defer b.editionsMu.Unlock()
 	if b.released != nil {
 		return b.released, nil
 	}

@@ -189,6 +189,19 @@ func folder(t testing.TB, dir string) map[string]string {
 	return all
 }
 
+// copyOf is a copy of a closed branch's folder.
+func copyOf(t testing.TB, dir string) string {
+	t.Helper()
+	to := t.TempDir()
+	if err := os.CopyFS(to, os.DirFS(dir)); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.Chmod(filepath.Join(to, FileName), 0o600); err != nil {
+		t.Fatal(err)
+	}
+	return to
+}
+
 // proven fails unless the whole file holds.
 func proven(t testing.TB, s *Session) Proof {
 	t.Helper()

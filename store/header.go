@@ -45,22 +45,27 @@ func checkHeader(path string) (version int, err error) {
 	if err != nil && !errors.Is(err, io.EOF) && !errors.Is(err, io.ErrUnexpectedEOF) {
 		return 0, fault(path, err)
 	}
-	truncated := func(expected int64) error {
-		return refuse("truncated", "file", path,
-			"size", strconv.FormatInt(info.Size(), 10), "expected", strconv.FormatInt(expected, 10))
-	}
 	if m := min(n, len(magic)); string(h[:m]) != string(magic[:m]) {
 		return 0, refuse("foreign_file", "file", path)
 	}
 	if n < headerSize {
-		return 0, truncated(headerSize)
+		return 0, truncated(path, info.Size(), headerSize)
 	}
 	if binary.BigEndian.Uint32(h[68:]) != applicationID {
 		return 0, refuse("foreign_file", "file", path)
 	}
+	// What a killed program left in its log counts as in the file.
+	log, err := readLog(path + "-wal")
+	if err != nil {
+		return 0, fault(path, err)
+	}
+	if log.header != nil {
+		h = log.header
+	}
 	version = int(binary.BigEndian.Uint32(h[60:]))
 	if version > migrations.Latest() {
-		return 0, newer(path, version)
+		return 0, refuse("newer_program", "file", path,
+			"version", strconv.Itoa(version), "known", strconv.Itoa(migrations.Latest()))
 	}
 	pageSize := int64(binary.BigEndian.Uint16(h[16:]))
 	if pageSize == 1 {
@@ -69,19 +74,19 @@ func checkHeader(path string) (version int, err error) {
 	if pageSize < 512 || pageSize&(pageSize-1) != 0 || version == 0 {
 		return 0, refuse("damaged", "file", path)
 	}
-	// A power cut may leave the file short while what is missing still stands
-	// in the write-ahead log, from which SQLite completes it.
-	if wal, err := os.Stat(path + "-wal"); err == nil && wal.Size() > 0 {
-		return version, nil
+	pages := log.pages
+	if pages == 0 {
+		pages = int64(binary.BigEndian.Uint32(h[28:]))
 	}
-	pages := int64(binary.BigEndian.Uint32(h[28:]))
-	if expected := pages * pageSize; info.Size() < expected {
-		return 0, truncated(expected)
+	for page := info.Size()/pageSize + 1; page <= pages; page++ {
+		if !log.holds[page] {
+			return 0, truncated(path, info.Size(), pages*pageSize)
+		}
 	}
 	return version, nil
 }
 
-func newer(path string, version int) error {
-	return refuse("newer_program", "file", path,
-		"version", strconv.Itoa(version), "known", strconv.Itoa(migrations.Latest()))
+func truncated(path string, size, expected int64) error {
+	return refuse("truncated", "file", path,
+		"size", strconv.FormatInt(size, 10), "expected", strconv.FormatInt(expected, 10))
 }

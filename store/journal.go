@@ -117,7 +117,7 @@ const entryColumns = "seq, at, desk, person, act, facts, commits, before, hash, 
 
 // scanEntry reads a row of entryColumns; ok is false where its texts are not
 // in canonical form.
-func scanEntry(row interface{ Scan(...any) error }) (e Entry, ok bool, err error) {
+func scanEntry(row scanner) (e Entry, ok bool, err error) {
 	var at int64
 	var before, hash []byte
 	err = row.Scan(&e.Seq, &at, &e.Desk, &e.Person, &e.Act, &e.facts, &e.commits, &before, &hash, &e.Signature)
@@ -133,6 +133,9 @@ func scanEntry(row interface{ Scan(...any) error }) (e Entry, ok bool, err error
 	copy(e.Hash[:], hash)
 	return e, ok, nil
 }
+
+// A scanner is a row.
+type scanner interface{ Scan(...any) error }
 
 // A queryer is a database or a transaction.
 type queryer interface {
@@ -158,7 +161,7 @@ type writing struct {
 	key    vault.SigningKey
 	last   Entry
 
-	committed func() // run once it is on the disk, with Branch.mu held; may be nil
+	committed func() // run once it is on the disk, before the next act; may be nil
 }
 
 // next is the number that the next entry will have, for the rows it makes.

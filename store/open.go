@@ -40,9 +40,11 @@ type Branch struct {
 
 	writing sync.Mutex // held for each act's transaction
 
-	mu       sync.Mutex // guards the rest
-	released []*released
-	results  []int64 // entries in order; nil until first asked for
+	editionsMu sync.Mutex
+	released   []*released // nil until first asked for
+
+	resultsMu sync.Mutex
+	results   []int64 // entries in order; nil until first asked for
 }
 
 // Info is what a branch is.
@@ -131,14 +133,6 @@ func open(ctx context.Context, path string, lock *folderLock, o Options) (*Branc
 
 // load reads what is needed at once.
 func (b *Branch) load(ctx context.Context) error {
-	// The log of a program that was killed may hold a newer header.
-	var version int
-	if err := b.db.QueryRowContext(ctx, "PRAGMA user_version").Scan(&version); err != nil {
-		return err
-	}
-	if version > migrations.Latest() {
-		return newer(b.path, version)
-	}
 	err := b.db.QueryRowContext(ctx, "SELECT name, desk, practice FROM branch").
 		Scan(&b.info.Name, &b.info.Desk, &b.info.Practice)
 	if err != nil {
@@ -152,11 +146,13 @@ func (b *Branch) load(ctx context.Context) error {
 	return nil
 }
 
-// Close closes the file and gives the folder free.
+// Close closes the file and gives the folder free. It waits for calls that
+// are under way; cancel the context of a long one first.
 func (b *Branch) Close() error {
-	b.writing.Lock() // an act under way is finished first
-	defer b.writing.Unlock()
-	err := b.db.Close()
+	err := b.db.Close() // which does not wait
+	for b.db.Stats().OpenConnections > 0 {
+		time.Sleep(time.Millisecond)
+	}
 	b.lock.release()
 	return fault(b.path, err)
 }

@@ -31,6 +31,7 @@ func closedBranch(t *testing.T) (dir, file string) {
 
 // What cannot be opened is told for what it is, and nothing is touched.
 func TestWhatCannotBeOpenedStaysUntouched(t *testing.T) {
+	whole, _ := closedBranch(t)
 	write := func(t *testing.T, file string, at int64, data []byte) {
 		t.Helper()
 		f := must(os.OpenFile(file, os.O_WRONLY, 0))
@@ -94,7 +95,8 @@ func TestWhatCannotBeOpenedStaysUntouched(t *testing.T) {
 				name += " without a lock file"
 			}
 			t.Run(name, func(t *testing.T) {
-				dir, file := closedBranch(t)
+				dir := copyOf(t, whole)
+				file := filepath.Join(dir, FileName)
 				fault.make(t, file)
 				if !locked {
 					if err := os.Remove(filepath.Join(dir, lockName)); err != nil {

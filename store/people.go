@@ -52,7 +52,7 @@ func (p *person) owner() string { return "person " + strconv.FormatInt(p.id, 10)
 
 const personColumns = "id, entry, name, role, public_key, locked"
 
-func scanPerson(row interface{ Scan(...any) error }) (p person, err error) {
+func scanPerson(row scanner) (p person, err error) {
 	err = row.Scan(&p.id, &p.entry, &p.name, &p.role, &p.publicKey, &p.locked)
 	return p, err
 }

@@ -32,8 +32,17 @@ func (e *Error) Error() string {
 	return strings.Join(parts, "; ")
 }
 
-// Unwrap is the cause.
-func (e *Error) Unwrap() error { return e.Cause }
+// Unwrap gives the problems, each an error, and the cause.
+func (e *Error) Unwrap() []error {
+	var all []error
+	for _, p := range e.Problems {
+		all = append(all, p)
+	}
+	if e.Cause != nil {
+		all = append(all, e.Cause)
+	}
+	return all
+}
 
 // Problems are what err has to say to a person. An error of another package
 // is one "unexpected".

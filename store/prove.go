@@ -21,12 +21,11 @@ type Proof struct {
 	// Last is the journal's last hash: where it is written down elsewhere, a
 	// cut-off end is found by it.
 	Last Hash
-	// Problems are in the order of entries; empty is proven. The codes, with
-	// "entry" the number of the entry: entry_missing, entry_altered,
-	// chain_broken, entry_not_signed, time_went_back; with "table" and "row" as
-	// well row_missing, row_altered, result_differs, edition_unusable; and
-	// row_not_journalled,
-	// schema_altered. No more than mostProblems are listed.
+	// Problems are in the order of entries; none is proven. The codes, with the
+	// entry's number: entry_missing, chain_broken, entry_altered,
+	// entry_not_signed, time_went_back; with the table and row as well:
+	// row_missing, row_altered, result_differs, edition_unusable; and of no
+	// entry: schema_altered, row_not_journalled. A thousand are listed at most.
 	Problems []model.Problem
 }
 

@@ -38,7 +38,11 @@ func (s *Session) ReleaseEdition(ctx context.Context, card model.Scorecard) (*mo
 			return err
 		}
 		done := newReleased(w.last.Seq, w.last.At, s.person.name, fingerprint[:], canonical)
-		w.committed = func() { b.released = append(slices.Clip(b.released), done) }
+		w.committed = func() {
+			b.editionsMu.Lock()
+			defer b.editionsMu.Unlock()
+			b.released = append(slices.Clip(b.released), done)
+		}
 		return w.insert("editions", w.last.Seq, fingerprint[:], canonical)
 	})
 	if err != nil {

@@ -19,7 +19,7 @@ const keptQuery = `SELECT r.entry, ifnull(j.at, 0), ifnull(p.name, ''), r.kept, 
 	LEFT JOIN journal c ON c.seq = x.entry LEFT JOIN people cp ON cp.id = c.person `
 
 // scanKept reads and unseals a row of keptQuery.
-func (s *Session) scanKept(row interface{ Scan(...any) error }) (k Kept, err error) {
+func (s *Session) scanKept(row scanner) (k Kept, err error) {
 	var at int64
 	var sealed []byte
 	var clearedAt sql.NullInt64
@@ -104,8 +104,8 @@ func (s *Session) Results(ctx context.Context, first, count int) ([]Kept, error)
 // resultIDs are all results' ids in order, so that any page is found without
 // counting through those before it. They are read once.
 func (b *Branch) resultIDs(ctx context.Context) ([]int64, error) {
-	b.mu.Lock()
-	defer b.mu.Unlock()
+	b.resultsMu.Lock()
+	defer b.resultsMu.Unlock()
 	if b.results != nil {
 		return b.results, nil
 	}
@@ -130,9 +130,11 @@ func (b *Branch) resultIDs(ctx context.Context) ([]int64, error) {
 	return ids, nil
 }
 
-// remember adds ids to those read; mu is held. Whoever read them between the
-// commit and now has them already.
+// remember adds ids to those read. Whoever read them between the commit and
+// now has them already.
 func (b *Branch) remember(kept []Kept) {
+	b.resultsMu.Lock()
+	defer b.resultsMu.Unlock()
 	if b.results == nil {
 		return
 	}

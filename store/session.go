@@ -40,6 +40,7 @@ func (b *Branch) SignIn(ctx context.Context, name, passphrase string) (*Session,
 	if !ok || !keys.Signing.Public().Equal(p.publicKey) {
 		return nil, refuse("person_altered", "person", p.name)
 	}
+	go b.resultIDs(context.Background()) // so that the first page need not wait
 	return &Session{b, p, keys}, nil
 }
 
@@ -89,8 +90,6 @@ func (s *Session) act(ctx context.Context, act duty.Act, do func(w *writing) err
 	}
 	b.lastAt.Store(w.last.At.UnixMilli())
 	if w.committed != nil {
-		b.mu.Lock()
-		defer b.mu.Unlock()
 		w.committed()
 	}
 	return nil

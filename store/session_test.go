@@ -9,6 +9,7 @@ import (
 	"strconv"
 	"sync"
 	"testing"
+	"time"
 
 	"weighhouse/model"
 	"weighhouse/model/duty"
@@ -200,4 +201,33 @@ func TestAnswersAndFiguresAreSealed(t *testing.T) {
 	look("open")
 	s.branch.Close()
 	look("closed")
+}
+
+// The folder is free only once the last call has come back.
+func TestClosingWaitsForReaders(t *testing.T) {
+	dir := t.TempDir()
+	s, e := practice(t, dir, Options{})
+	must(s.KeepResult(t.Context(), nth(e, 1)))
+	rows := must(s.branch.db.QueryContext(t.Context(), "SELECT seq FROM journal"))
+	if !rows.Next() {
+		t.Fatal("no rows")
+	}
+	closed := make(chan struct{})
+	go func() {
+		s.branch.Close()
+		close(closed)
+	}()
+	time.Sleep(50 * time.Millisecond)
+	select {
+	case <-closed:
+		t.Error("closed under a reader")
+	default:
+	}
+	_, err := Open(t.Context(), dir, Options{})
+	wantCode(t, err, "locked")
+	rows.Close()
+	<-closed
+	_, err = s.Results(t.Context(), 0, 1)
+	wantCode(t, err, "unexpected")
+	proven(t, openPractice(t, dir, Options{}))
 }
