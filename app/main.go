@@ -6,7 +6,6 @@ import (
 	"flag"
 	"fmt"
 	"os"
-	"strings"
 	"time"
 
 	"fyne.io/fyne/v2/app"
@@ -24,10 +23,6 @@ func main() {
 		fmt.Fprintln(os.Stderr, "weighhouse: unexpected:", flag.Args())
 		flag.Usage()
 		os.Exit(2)
-	}
-	// Without a language Fyne logs an error at every start.
-	if lang := os.Getenv("LANG"); os.Getenv("LC_ALL") == "" && (lang == "" || strings.HasPrefix(lang, "C") || lang == "POSIX") {
-		os.Setenv("LANG", "en_GB.UTF-8")
 	}
 	// A machine whose graphics cannot draw would leave an invisible process.
 	watch := time.AfterFunc(10*time.Second, func() {

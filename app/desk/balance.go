@@ -35,10 +35,10 @@ type balance struct {
 
 // A balanceRow is one step and where it starts and ends, lowest and highest.
 type balanceRow struct {
-	step         model.Step
-	fromLo, toLo float64
-	fromHi, toHi float64
-	label, words string
+	step                 model.Step
+	fromLo, toLo         float64
+	fromHi, toHi         float64
+	label, answer, words string
 }
 
 func newBalance(reader *words.Reader, labels *words.Labels, e *model.Edition) *balance {
@@ -58,7 +58,10 @@ func (b *balance) show(a *model.Answers) {
 		r.toLo, r.toHi = lo, hi
 		item := &b.edition.Items()[s.Index]
 		r.label = b.labels.Question(item)
-		r.words = stepWords(b.reader, b.labels, item, s, a)
+		if !s.Open() {
+			r.answer = answerWords(b.reader, b.labels, item, s, a)
+		}
+		r.words = stepWords(b.reader, r, s)
 		b.rows = append(b.rows, r)
 	}
 	b.chosen = min(b.chosen, len(b.rows)-1)
@@ -94,12 +97,11 @@ func pdAt(logOdds float64) model.PD {
 
 // stepWords says what one answer adds or takes, as a change of the odds: e to
 // the power of its distance from the average.
-func stepWords(r *words.Reader, l *words.Labels, item *model.Item, s model.Step, a *model.Answers) string {
-	question := l.Question(item)
+func stepWords(r *words.Reader, row balanceRow, s model.Step) string {
+	question, answer := row.label, row.answer
 	if s.Open() {
 		return r.T("balance.open", "question", question)
 	}
-	answer := answerWords(r, l, item, s, a)
 	above := s.Above().Float()
 	times := model.Number(math.Round(math.Exp(math.Abs(above)) * float64(model.One))).Round(2)
 	switch {
@@ -307,8 +309,10 @@ func (r *balanceRenderer) ticks(a axis) {
 		r.print(r.b.reader.Rate(model.Rate(pd)), x, a.bottom+4, 60, 0.5, colorQuiet, fyne.TextStyle{})
 	}
 	r.print(r.b.reader.T("balance.axis"), 4, a.bottom+4, a.left-30, 0, colorQuiet, fyne.TextStyle{})
+	r.print(r.b.reader.T("balance.sides"), 4, 3, a.left-14, 0, colorQuiet, fyne.TextStyle{})
 	x := a.x(r.b.centre)
 	r.line(x, a.top-2, x, a.bottom, 1, colorQuiet)
+	r.print(r.b.reader.T("balance.average"), x+4, a.bottom-17, a.right-x-4, 0, colorQuiet, fyne.TextStyle{})
 }
 
 func (r *balanceRenderer) row(a axis, i int) {
@@ -346,6 +350,18 @@ func (r *balanceRenderer) row(a axis, i int) {
 		}
 		r.line(back, y+6, tip, y+10.5, 1.5, colorStep)
 		r.line(tip, y+10.5, back, y+15, 1.5, colorStep)
+	}
+	r.answer(a, row, min(from, to), max(from, to), y)
+}
+
+// answer stands beside its step, on the side where there is room.
+func (r *balanceRenderer) answer(a axis, row balanceRow, left, right, y float32) {
+	const room = 10
+	before, after := left-a.left-room, a.right-right-room
+	if after >= before || after > 220 {
+		r.print(row.answer, right+room, y+2, after, 0, colorQuiet, fyne.TextStyle{})
+	} else {
+		r.print(row.answer, left-room, y+2, before, 1, colorQuiet, fyne.TextStyle{})
 	}
 }
 

@@ -159,6 +159,13 @@ func (d *Desk) banner() fyne.CanvasObject {
 		container.NewPadded(container.NewBorder(nil, nil, left, right)))
 }
 
+// caution stands wherever a recommendation stands.
+func (d *Desk) caution() fyne.CanvasObject {
+	l := paragraph(d.reader.T("desk.caution"))
+	l.SizeName = theme.SizeNameCaptionText
+	return l
+}
+
 // today is the date that the branch goes by, and whether it is doubtful.
 func (d *Desk) today() (model.Date, error) { return d.session.Branch().Today() }
 

@@ -2,6 +2,7 @@ package desk
 
 import (
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 
@@ -61,7 +62,7 @@ func (p *detailsPage) object() fyne.CanvasObject {
 			work.Add(paragraph(workedWords(r, labels, &e.Items()[i], iv.worked[i])))
 		}
 	}
-	return inset(container.NewBorder(heading(r.T("details.title")), nil, nil, nil,
+	return inset(container.NewBorder(heading(r.T("details.title")), d.caution(), nil, nil,
 		container.NewVScroll(container.NewVBox(form, widget.NewSeparator(), heading(r.T("details.worked")), work))))
 }
 
@@ -101,7 +102,7 @@ func workedWords(r *words.Reader, l *words.Labels, item *model.Item, w model.Wor
 // pairs lays out captions and their texts in two columns.
 type pairs struct{}
 
-const pairsLabel = 230
+const pairsLabel = 300
 
 func (pairs) MinSize(objects []fyne.CanvasObject) fyne.Size {
 	var h float32
@@ -120,6 +121,9 @@ func (pairs) Layout(objects []fyne.CanvasObject, size fyne.Size) {
 		h := text.MinSize().Height
 		text.Resize(fyne.NewSize(size.Width-pairsLabel, h))
 		text.Move(fyne.NewPos(pairsLabel, y))
+		if t, ok := label.(*canvas.Text); ok {
+			t.Text = shorten(t.Text, pairsLabel-12, t.TextSize, t.TextStyle)
+		}
 		label.Move(fyne.NewPos(6, y+(min(h, 31)-label.MinSize().Height)/2))
 		label.Resize(label.MinSize())
 		y += h

@@ -5,7 +5,9 @@ import (
 	"unicode/utf8"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/theme"
 	"fyne.io/fyne/v2/widget"
 
 	"weighhouse/model"
@@ -107,4 +109,39 @@ func (e *entry) fits(n int) bool {
 		e.full(model.Problem{Code: "text_too_long", Args: model.Args{"length": strconv.Itoa(length), "most": strconv.Itoa(e.most)}})
 	}
 	return false
+}
+
+// CreateRenderer is Fyne's with a heavier border under the focus, for bad
+// light, and a fainter one where nothing may be entered.
+func (e *entry) CreateRenderer() fyne.WidgetRenderer {
+	return &entryRenderer{e.Entry.CreateRenderer(), e}
+}
+
+type entryRenderer struct {
+	fyne.WidgetRenderer
+	e *entry
+}
+
+func (r *entryRenderer) Refresh() {
+	r.WidgetRenderer.Refresh()
+	r.paint()
+}
+
+func (r *entryRenderer) Layout(size fyne.Size) {
+	r.WidgetRenderer.Layout(size)
+	r.paint()
+}
+
+func (r *entryRenderer) paint() {
+	ground, ok := r.Objects()[0].(*canvas.Rectangle)
+	border, yes := r.Objects()[1].(*canvas.Rectangle)
+	if !ok || !yes {
+		return
+	}
+	border.StrokeWidth = 1
+	if r.e.Disabled() {
+		ground.FillColor, border.StrokeColor = shade(theme.ColorNameDisabledButton), shade(theme.ColorNameSeparator)
+	} else if canvasOf(r.e) != nil && canvasOf(r.e).Focused() == fyne.Focusable(r.e) {
+		border.StrokeWidth = 2
+	}
 }

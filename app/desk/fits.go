@@ -47,7 +47,7 @@ func (p *fitsPage) object() fyne.CanvasObject {
 	p.list.marked = true
 	p.list.keys = d.key
 	p.list.setCount(len(offers))
-	return inset(container.NewBorder(head, nil, nil, nil, p.list))
+	return inset(container.NewBorder(head, d.caution(), nil, nil, p.list))
 }
 
 // keysPage says what every key does.
@@ -69,7 +69,6 @@ func (p *keysPage) object() fyne.CanvasObject {
 	for _, k := range windowKeys {
 		add(string(k.key), r.T("keys."+k.word+"_does"))
 	}
-	add("F12", r.T("keys.evidence_does"))
 	add("Esc", r.T("keys.escape_does"))
 	return inset(container.NewBorder(heading(r.T("keys.title")), nil, nil, nil, container.NewVScroll(form)))
 }

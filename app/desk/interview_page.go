@@ -88,7 +88,7 @@ func (d *Desk) products(today model.Date) ([]store.Released, error) {
 func (p *interviewPage) object() fyne.CanvasObject {
 	d, e := p.desk, p.iv.edition
 	p.labels = d.labels(e)
-	p.panel = newPanel(d.reader, p.labels, e)
+	p.panel = newPanel(d.reader, p.labels, e, d.caution())
 	p.strip = newStrip(d.reader, p.labels)
 	p.strip.hide(d.hidden)
 	list := newStack()
@@ -174,7 +174,7 @@ func (p *interviewPage) current(r *row) {
 	r.setCurrent(true)
 	top, height := r.Position().Y, r.Size().Height
 	view := p.scroll.Size().Height
-	const room = 70 // of what comes before and after
+	const room = 130 // of what comes before and after
 	switch offset := p.scroll.Offset.Y; {
 	case top-room < offset:
 		p.scroll.ScrollToOffset(fyne.NewPos(0, max(top-room, 0)))

@@ -49,7 +49,7 @@ func (p *keptPage) object() fyne.CanvasObject {
 	p.tell(0)
 	side := container.New(&sideWidth{}, container.NewVScroll(p.about))
 	head := container.NewVBox(heading(r.T("kept.title", "n", count)), caption(r.T("kept.keys")))
-	return inset(container.NewBorder(head, nil, nil, side, p.list))
+	return inset(container.NewBorder(head, d.caution(), nil, side, p.list))
 }
 
 func (p *keptPage) opened() {

@@ -18,7 +18,7 @@ var windowKeys = []struct {
 }{
 	{fyne.KeyF1, "keys"}, {fyne.KeyF2, "new"}, {fyne.KeyF3, "kept"}, {fyne.KeyF4, "scorecards"},
 	{fyne.KeyF5, "why"}, {fyne.KeyF6, "details"}, {fyne.KeyF7, "fits"}, {fyne.KeyF8, "language"},
-	{fyne.KeyF9, "hide"}, {fyne.KeyF10, "finish"}, {fyne.KeyF11, "light"},
+	{fyne.KeyF9, "hide"}, {fyne.KeyF10, "finish"}, {fyne.KeyF11, "light"}, {fyne.KeyF12, "evidence"},
 }
 
 // key does what a key of the window does, and tells whether it is one.

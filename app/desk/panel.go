@@ -33,15 +33,13 @@ type panel struct {
 	object   fyne.CanvasObject
 }
 
-func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition) *panel {
+func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caution fyne.CanvasObject) *panel {
 	p := &panel{reader: reader, labels: labels, edition: e,
 		answered: figure(theme.TextSize(), false), mark: newMark(44), verdict: figure(theme.TextHeadingSize(), true),
 		firmness: figure(theme.CaptionTextSize(), false), odds: paragraph(""), figures: figure(theme.TextSize(), false),
 		decider: paragraph(""), payment: paragraph(""), rules: paragraph("")}
 	p.rules.Importance = widget.WarningImportance
 	top := container.NewBorder(nil, nil, p.mark, nil, container.NewVBox(p.verdict, p.firmness))
-	caution := paragraph(reader.T("desk.caution"))
-	caution.SizeName = theme.SizeNameCaptionText
 	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.odds, inset(p.figures),
 		widget.NewSeparator(), p.payment, p.decider, p.rules)
 	ground := canvas.NewRectangle(shade(colorRaised))

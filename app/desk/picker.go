@@ -242,7 +242,7 @@ func (p *picker) CreateRenderer() fyne.WidgetRenderer {
 		r := &rowRenderer{p: p}
 		for _, o := range p.options {
 			ground, text := canvas.NewRectangle(nil), canvas.NewText(o.label, nil)
-			ground.CornerRadius = boxHeight() / 2
+			ground.CornerRadius = 2 * theme.InputRadiusSize()
 			text.Alignment = fyne.TextAlignCenter
 			r.grounds, r.texts = append(r.grounds, ground), append(r.texts, text)
 			r.objects = append(r.objects, ground, text)
@@ -313,7 +313,7 @@ func (r *rowRenderer) paint() {
 }
 
 // faceRenderer draws the chosen label and an arrow. A label too long for a
-// line is drawn on two smaller ones in the same room.
+// line is drawn smaller, on two lines if need be, in the same room.
 type faceRenderer struct {
 	p      *picker
 	ground *canvas.Rectangle
@@ -321,7 +321,10 @@ type faceRenderer struct {
 	arrow  [2]*canvas.Line
 }
 
-const arrowRoom = 24
+const (
+	arrowRoom  = 24
+	smallLabel = 11 // two lines of it have the room of one
+)
 
 func (r *faceRenderer) Objects() []fyne.CanvasObject {
 	return []fyne.CanvasObject{r.ground, r.lines[0], r.lines[1], r.arrow[0], r.arrow[1]}
@@ -351,7 +354,10 @@ func (r *faceRenderer) Layout(size fyne.Size) {
 	}
 	width, textSize, lines := size.Width-2*pad-arrowRoom, theme.TextSize(), 1
 	if fyne.MeasureText(label, textSize, fyne.TextStyle{}).Width > width {
-		textSize, lines = 11, 2
+		textSize = smallLabel
+		if fyne.MeasureText(label, textSize, fyne.TextStyle{}).Width > width {
+			lines = 2
+		}
 	}
 	height := lineHeight(textSize)
 	top := (size.Height - height*float32(lines)) / 2

@@ -176,10 +176,10 @@ func (l *pickerList) MouseMoved(e *desktop.MouseEvent) {
 // listRows is how many rows show at the most.
 const listRows = 12
 
-// shown is how many rows there is room for.
+// shown is how many rows show; one at least, to say that there is none.
 func (l *pickerList) shown() int {
 	room := int((l.canvas.Size().Height - 2*theme.Padding()) / boxHeight())
-	return max(1, min(listRows, len(l.picker.options), room))
+	return max(1, min(listRows, len(l.found), room))
 }
 
 // frame is where the list stands: under the picker or, where there is no room,

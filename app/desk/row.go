@@ -54,17 +54,25 @@ func (r *row) setAsked(on bool, why string) {
 const (
 	numberWidth   = 30
 	evidenceWidth = 84
+	rightEdge     = 12 // the scroll bar's
 	questionGap   = 4
 	questionLines = 2
+	helpLines     = 2
 )
 
 func (r *row) CreateRenderer() fyne.WidgetRenderer {
-	v := &questionRenderer{row: r, ground: canvas.NewRectangle(nil), number: canvas.NewText(r.number, nil), help: caption("")}
+	v := &questionRenderer{row: r, ground: canvas.NewRectangle(nil), number: canvas.NewText(r.number, nil)}
 	v.number.TextSize, v.number.Alignment = theme.TextSize(), fyne.TextAlignTrailing
 	for range questionLines {
 		v.question = append(v.question, canvas.NewText("", nil))
 	}
-	v.objects = []fyne.CanvasObject{v.ground, v.number, v.help, r.box, r.box.line()}
+	for range helpLines {
+		v.help = append(v.help, caption(""))
+	}
+	v.objects = []fyne.CanvasObject{v.ground, v.number, r.box, r.box.line()}
+	for _, t := range v.help {
+		v.objects = append(v.objects, t)
+	}
 	for _, t := range v.question {
 		t.TextSize = theme.TextSize()
 		v.objects = append(v.objects, t)
@@ -81,7 +89,7 @@ type questionRenderer struct {
 	ground   *canvas.Rectangle
 	number   *canvas.Text
 	question []*canvas.Text
-	help     *canvas.Text
+	help     []*canvas.Text
 	objects  []fyne.CanvasObject
 }
 
@@ -98,17 +106,19 @@ func (v *questionRenderer) MinSize() fyne.Size {
 			text += lineHeight(theme.TextSize())
 		}
 	}
-	if v.row.help != "" {
-		text += lineHeight(theme.CaptionTextSize())
+	for _, line := range wrap(v.row.help, width, theme.CaptionTextSize(), fyne.TextStyle{}, helpLines) {
+		if line != "" {
+			text += lineHeight(theme.CaptionTextSize())
+		}
 	}
 	boxed := v.row.box.MinSize().Height + v.row.box.line().MinSize().Height
-	return fyne.NewSize(480, max(text, boxed)+questionGap)
+	return fyne.NewSize(480, max(text, boxed)+questionGap+3)
 }
 
 // columns are where the question and the box start and how wide they are.
 func (v *questionRenderer) columns(width float32) (question, questionWidth, boxAt, boxWidth float32) {
 	question = numberWidth + 8
-	rest := width - question - evidenceWidth
+	rest := width - question - evidenceWidth - rightEdge
 	questionWidth = rest*0.45 - 12
 	boxAt = question + rest*0.45
 	return question, questionWidth, boxAt, rest*0.55 - 8
@@ -130,8 +140,11 @@ func (v *questionRenderer) Layout(size fyne.Size) {
 			used = i + 1
 		}
 	}
-	v.help.Text = shorten(v.row.help, questionWidth, theme.CaptionTextSize(), fyne.TextStyle{})
-	v.help.Move(fyne.NewPos(question, questionGap+3+line*float32(used)))
+	small := lineHeight(theme.CaptionTextSize())
+	for i, text := range wrap(v.row.help, questionWidth, theme.CaptionTextSize(), fyne.TextStyle{}, helpLines) {
+		v.help[i].Text = text
+		v.help[i].Move(fyne.NewPos(question, questionGap+3+line*float32(used)+small*float32(i)))
+	}
 	height := v.row.box.MinSize().Height
 	v.row.box.Move(fyne.NewPos(boxAt, questionGap))
 	v.row.box.Resize(fyne.NewSize(boxWidth, height))
@@ -139,7 +152,7 @@ func (v *questionRenderer) Layout(size fyne.Size) {
 	note.Move(fyne.NewPos(boxAt+4, questionGap+height))
 	note.Resize(fyne.NewSize(size.Width-boxAt-8, note.MinSize().Height))
 	if e := v.row.evidence; e != nil {
-		e.Move(fyne.NewPos(size.Width-evidenceWidth, questionGap))
+		e.Move(fyne.NewPos(size.Width-evidenceWidth-rightEdge, questionGap))
 		e.Resize(fyne.NewSize(evidenceWidth-4, e.MinSize().Height))
 	}
 }

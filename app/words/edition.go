@@ -17,6 +17,7 @@ import (
 //	CHARACTERISTIC          the question
 //	CHARACTERISTIC.unit, CHARACTERISTIC.help, CHARACTERISTIC.papers
 //	CHARACTERISTIC.ATTRIBUTE and CHARACTERISTIC.ATTRIBUTE.reason
+//	CHARACTERISTIC.reason   of a number's slope
 //	CHARACTERISTIC.line.LINE
 //	band.BAND, band.BAND.caution
 //	rule.RULE, rule.RULE.text
@@ -83,7 +84,7 @@ func (l *Labels) Attribute(i *model.Item, n int) string {
 // Reason is what an applicant is told of an attribute that spoke against.
 func (l *Labels) Reason(i *model.Item, n int) string {
 	if n < 0 {
-		return l.Question(i)
+		return l.slopeReason(i)
 	}
 	a := i.Attributes[n]
 	reason := l.Text(i.Code+"."+a.Code+".reason", a.Reason)
@@ -91,6 +92,17 @@ func (l *Labels) Reason(i *model.Item, n int) string {
 		return strings.Join([]string{l.Question(i), l.Attribute(i, n)}, ": ")
 	}
 	return reason
+}
+
+// slopeReason is what is told of a number without bands: the reason on the
+// row of its slope.
+func (l *Labels) slopeReason(i *model.Item) string {
+	for _, a := range l.edition.Scorecard().Attributes {
+		if a.Characteristic == i.Code && a.Code == "" && a.Reason != "" {
+			return l.Text(i.Code+".reason", a.Reason)
+		}
+	}
+	return l.Question(i)
 }
 
 // Line is the label of one line of a worksheet.
