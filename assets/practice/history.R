@@ -78,10 +78,10 @@ numbers <- list(term = term, worst_delay = delay[again], trade_years = years, wo
   payment_share = share[surplus > 0])
 seen <- function(limit) sapply(codes, function(c) if (c %in% names(numbers)) limit(numbers[[c]], na.rm = TRUE) else NA)
 
-save <- function(table, file) write.csv(table, file.path(dir, file), quote = FALSE, row.names = FALSE)
-save(format(coefficients, digits = 12, scientific = FALSE, trim = TRUE), "coefficients.csv")
-save(format(as.data.frame(covariance), digits = 12, trim = TRUE), "covariance.csv")
-save(data.frame(name = codes, average = round(average, 6), from = seen(min), to = seen(max)), "averages.csv")
-save(data.frame(paid_out, default, amount, term, line_of_work, premises, years, days, books, again,
+put <- function(table, file) write.csv(table, file.path(dir, file), quote = FALSE, row.names = FALSE)
+put(format(coefficients, digits = 12, scientific = FALSE, trim = TRUE), "coefficients.csv")
+put(format(as.data.frame(covariance), digits = 12, trim = TRUE), "covariance.csv")
+put(data.frame(name = codes, average = round(average, 6), from = seen(min), to = seen(max)), "averages.csv")
+put(data.frame(paid_out, default, amount, term, line_of_work, premises, years, days, books, again,
   delay = ifelse(again, delay, NA), debts, surplus = round(surplus, 2)), "history.csv")
 cat(n, "loans,", sum(default), "defaults, log-likelihood", format(as.numeric(logLik(fit)), digits = 12), "\n")
