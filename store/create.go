@@ -2,7 +2,6 @@ package store
 
 import (
 	"context"
-
 	"os"
 	"strconv"
 	"time"
@@ -26,12 +25,12 @@ func Create(ctx context.Context, dir string, f Founding, o Options) (*Branch, er
 	if f.Name == "" || len(f.Desk) != 1 || f.Desk[0] < 'A' || f.Desk[0] > 'Z' || foldName(f.Person) == "" || f.Passphrase == "" {
 		return nil, refuse("bad_founding")
 	}
-	if err := os.MkdirAll(dir, 0o700); err != nil {
-		return nil, fault(dir, err)
-	}
 	dir, path, err := locate(dir)
 	if err != nil {
 		return nil, err
+	}
+	if err := os.MkdirAll(dir, 0o700); err != nil {
+		return nil, fault(path, err)
 	}
 	lock, err := lockFolder(dir, true)
 	if err != nil {

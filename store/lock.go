@@ -17,9 +17,9 @@ func lockFolder(dir string, make bool) (*folderLock, error) {
 	path := filepath.Join(dir, lockName)
 	for {
 		_, err := os.Stat(path)
-		made := make && os.IsNotExist(err)
+		made := os.IsNotExist(err)
 		flags := os.O_RDWR
-		if made {
+		if make {
 			flags |= os.O_CREATE
 		}
 		f, err := os.OpenFile(path, flags, 0o600)

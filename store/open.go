@@ -85,22 +85,27 @@ func Open(ctx context.Context, dir string, o Options) (*Branch, error) {
 	return b, nil
 }
 
-// locate makes a folder absolute and refuses network drives.
+// locate makes a folder absolute and refuses network drives. The folder need
+// not be there yet.
 func locate(dir string) (abs, path string, err error) {
 	if abs, err = filepath.Abs(dir); err != nil {
 		return "", "", fault(dir, err)
 	}
 	path = filepath.Join(abs, FileName)
-	remote, err := onNetwork(abs)
-	switch {
-	case errors.Is(err, os.ErrNotExist):
-		return "", "", refuse("no_branch", "file", path)
-	case err != nil:
-		return "", "", fault(path, err)
-	case remote:
-		return "", "", refuse("network_drive", "file", path)
+	there := abs
+	for {
+		remote, err := onNetwork(there)
+		switch parent := filepath.Dir(there); {
+		case errors.Is(err, os.ErrNotExist) && parent != there:
+			there = parent
+		case err != nil:
+			return "", "", fault(path, err)
+		case remote:
+			return "", "", refuse("network_drive", "file", path)
+		default:
+			return abs, path, nil
+		}
 	}
-	return abs, path, nil
 }
 
 // open opens a file under its lock.

@@ -100,7 +100,7 @@ func TestNetworkDrivesAreRefused(t *testing.T) {
 		}
 		_, err := Open(t.Context(), dir, Options{})
 		wantCode(t, err, "network_drive")
-		_, err = CreatePractice(t.Context(), dir, Options{})
+		_, err = CreatePractice(t.Context(), filepath.Join(dir, "new", "branch"), Options{})
 		wantCode(t, err, "network_drive")
 	}
 	if !maps.Equal(before, folder(t, dir)) {
