@@ -23,7 +23,7 @@ func (p *interviewPage) applicantRows(list *fyne.Container) {
 		p.strip.show(p.iv)
 	}
 	p.who = newRow("", d.reader.T("desk.who"), d.reader.T("desk.who_help"), name, nil)
-	name.on().gained = func() { p.current(p.who) }
+	name.on().gained = func() { p.current(p.who, atName) }
 	if d.hidden {
 		name.putText("")
 		name.Disable()
@@ -33,7 +33,7 @@ func (p *interviewPage) applicantRows(list *fyne.Container) {
 	kind := newPicker(d.reader, d.key, options(d.reader.Name(kinds[0]), d.reader.Name(kinds[1])))
 	kind.put(optionAnswer(indexOf(kinds, p.iv.answers.Client)))
 	p.kind = newRow("", d.reader.T("desk.client"), "", kind, nil)
-	kind.on().gained = func() { p.current(p.kind) }
+	kind.on().gained = func() { p.current(p.kind, atClient) }
 	kind.on().done = func() { p.what.box.focus() }
 	kind.on().changed = func(a model.Answer) {
 		if a.State == model.Given {
@@ -53,7 +53,7 @@ func (p *interviewPage) applicantRows(list *fyne.Container) {
 	what := newPicker(d.reader, d.key, options(labels...))
 	what.put(optionAnswer(indexOf(codes, p.iv.edition.Scorecard().Card.ProductCode)))
 	p.what = newRow("", d.reader.T("desk.product"), "", what, nil)
-	what.on().gained = func() { p.current(p.what) }
+	what.on().gained = func() { p.current(p.what, atProduct) }
 	what.on().done = func() { p.goOn(-1) }
 	what.on().changed = func(a model.Answer) {
 		if a.State == model.Given {
@@ -106,11 +106,6 @@ func (p *interviewPage) change(product string, client model.ClientKind) {
 	}
 	iv.weighAll()
 	d.interview = iv
-	next := newInterviewPage(d).(*interviewPage)
-	d.open(next)
-	if product != p.iv.edition.Scorecard().Card.ProductCode {
-		next.what.box.focus()
-	} else {
-		next.kind.box.focus()
-	}
+	iv.at = p.iv.at
+	d.show("interview")
 }

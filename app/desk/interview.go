@@ -26,6 +26,8 @@ type interview struct {
 	// handedIn tells that the officer has ended the interview; an answer that
 	// changes afterwards takes that back.
 	handedIn bool
+	// at is the row that last had the focus, by item; see the page.
+	at int
 
 	kept        store.Kept // the result last kept; its ID is 0 before the first
 	keptText    string     // the answers that it was kept with
@@ -34,7 +36,7 @@ type interview struct {
 }
 
 func newInterview(e *model.Edition, today model.Date, client model.ClientKind) *interview {
-	iv := &interview{edition: e, answers: e.NewAnswers(today, client), today: today, wrong: make([][]model.Problem, len(e.Items()))}
+	iv := &interview{edition: e, answers: e.NewAnswers(today, client), today: today, wrong: make([][]model.Problem, len(e.Items())), at: atName}
 	iv.weigh()
 	return iv
 }

@@ -150,7 +150,7 @@ func (p *interviewPage) questionRow(item *model.Item) *row {
 		p.show()
 	}
 	h.done = func() { p.goOn(index) }
-	h.gained = func() { p.current(r) }
+	h.gained = func() { p.current(r, index) }
 	return r
 }
 
@@ -163,7 +163,8 @@ func (p *interviewPage) evidence(index int, seen bool) {
 }
 
 // current tints a row and brings it in sight.
-func (p *interviewPage) current(r *row) {
+func (p *interviewPage) current(r *row, at int) {
+	p.iv.at = at
 	if p.now == r {
 		return
 	}
@@ -205,14 +206,25 @@ func (p *interviewPage) show() {
 	p.strip.show(p.iv)
 }
 
+// The rows above the questions, where an item's index would be.
+const (
+	atName    = -1
+	atClient  = -2
+	atProduct = -3
+)
+
+// opened goes back to the row that last had the focus.
 func (p *interviewPage) opened() {
-	for _, i := range append([]int(nil), p.iv.bounds.Missing...) {
-		if p.iv.begun() {
-			p.rows[i].box.focus()
-			return
-		}
+	switch at := p.iv.at; at {
+	case atName:
+		p.who.box.focus()
+	case atClient:
+		p.kind.box.focus()
+	case atProduct:
+		p.what.box.focus()
+	default:
+		p.rows[at].box.focus()
 	}
-	p.who.box.focus()
 }
 
 func (p *interviewPage) key(name fyne.KeyName) bool {

@@ -39,7 +39,7 @@ type picker struct {
 // rowMost is how wide a picker's options may be together to stand in a row,
 // and rowOptions how many they may be.
 const (
-	rowMost    = 430
+	rowMost    = 295
 	rowOptions = 6
 )
 

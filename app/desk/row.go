@@ -19,10 +19,12 @@ type row struct {
 	evidence *evidence // nil where none is asked for
 	current  bool
 	asked    bool // of this applicant
+	wide     bool // the box stands beneath the question, over the whole width
 }
 
 func newRow(number, question, help string, b box, e *evidence) *row {
-	r := &row{number: number, question: question, help: help, box: b, evidence: e, asked: true}
+	_, wide := b.(*worksheetBox)
+	r := &row{number: number, question: question, help: help, box: b, evidence: e, asked: true, wide: wide}
 	r.ExtendBaseWidget(r)
 	return r
 }
@@ -56,6 +58,7 @@ const (
 	evidenceWidth = 84
 	rightEdge     = 12 // the scroll bar's
 	questionGap   = 4
+	widest        = 620 // of a box beneath its question
 	questionLines = 2
 	helpLines     = 2
 )
@@ -96,63 +99,70 @@ type questionRenderer struct {
 func (v *questionRenderer) Objects() []fyne.CanvasObject { return v.objects }
 func (v *questionRenderer) Destroy()                     {}
 
-// MinSize leaves room for the question and its help, or for the box and its
-// note.
+// MinSize leaves room for the question and its help, and for the box and its
+// note beside or beneath them.
 func (v *questionRenderer) MinSize() fyne.Size {
-	_, width, _, _ := v.columns(max(v.row.Size().Width, 480))
-	text := float32(3)
-	for _, line := range wrap(v.row.question, width, theme.TextSize(), fyne.TextStyle{}, questionLines) {
-		if line != "" {
-			text += lineHeight(theme.TextSize())
-		}
-	}
-	for _, line := range wrap(v.row.help, width, theme.CaptionTextSize(), fyne.TextStyle{}, helpLines) {
-		if line != "" {
-			text += lineHeight(theme.CaptionTextSize())
-		}
-	}
+	c := v.columns(max(v.row.Size().Width, 480))
+	text := 3 + v.say(c.questionWidth)
 	boxed := v.row.box.MinSize().Height + v.row.box.line().MinSize().Height
+	if v.row.wide {
+		return fyne.NewSize(480, text+boxed+2*questionGap)
+	}
 	return fyne.NewSize(480, max(text, boxed)+questionGap+3)
 }
 
-// columns are where the question and the box start and how wide they are.
-func (v *questionRenderer) columns(width float32) (question, questionWidth, boxAt, boxWidth float32) {
-	question = numberWidth + 8
-	rest := width - question - evidenceWidth - rightEdge
-	questionWidth = rest*0.45 - 12
-	boxAt = question + rest*0.45
-	return question, questionWidth, boxAt, rest*0.55 - 8
+// columns are where the parts of a row start and how wide they are.
+type columns struct{ question, questionWidth, box, boxWidth, evidence float32 }
+
+func (v *questionRenderer) columns(width float32) columns {
+	c := columns{question: numberWidth + 8, evidence: width - evidenceWidth - rightEdge}
+	rest := c.evidence - c.question
+	c.questionWidth, c.box, c.boxWidth = rest*0.45-12, c.question+rest*0.45, rest*0.55-8
+	if v.row.evidence == nil {
+		c.boxWidth += evidenceWidth
+	}
+	if v.row.wide {
+		c.questionWidth, c.box, c.boxWidth = rest-12, c.question, min(rest+evidenceWidth, widest)
+	}
+	return c
+}
+
+// say fills in the question's and the help's lines for a width, one beneath
+// the other, and returns their height.
+func (v *questionRenderer) say(width float32) float32 {
+	y := float32(0)
+	fill := func(text string, into []*canvas.Text, size float32) {
+		for i, line := range wrap(text, width, size, fyne.TextStyle{}, len(into)) {
+			into[i].Text = line
+			into[i].Move(fyne.NewPos(numberWidth+8, questionGap+3+y))
+			into[i].Resize(fyne.NewSize(width, lineHeight(size)))
+			if line != "" {
+				y += lineHeight(size)
+			}
+		}
+	}
+	fill(v.row.question, v.question, theme.TextSize())
+	fill(v.row.help, v.help, theme.CaptionTextSize())
+	return y
 }
 
 func (v *questionRenderer) Layout(size fyne.Size) {
 	v.ground.Resize(size)
-	question, questionWidth, boxAt, boxWidth := v.columns(size.Width)
-	line := lineHeight(theme.TextSize())
+	c := v.columns(size.Width)
 	v.number.Move(fyne.NewPos(0, questionGap+3))
-	v.number.Resize(fyne.NewSize(numberWidth, line))
-	used := 0
-	for i, text := range wrap(v.row.question, questionWidth, theme.TextSize(), fyne.TextStyle{}, questionLines) {
-		t := v.question[i]
-		t.Text = text
-		t.Move(fyne.NewPos(question, questionGap+3+line*float32(i)))
-		t.Resize(fyne.NewSize(questionWidth, line))
-		if text != "" {
-			used = i + 1
-		}
-	}
-	small := lineHeight(theme.CaptionTextSize())
-	for i, text := range wrap(v.row.help, questionWidth, theme.CaptionTextSize(), fyne.TextStyle{}, helpLines) {
-		v.help[i].Text = text
-		v.help[i].Move(fyne.NewPos(question, questionGap+3+line*float32(used)+small*float32(i)))
+	v.number.Resize(fyne.NewSize(numberWidth, lineHeight(theme.TextSize())))
+	top := float32(questionGap)
+	if text := v.say(c.questionWidth); v.row.wide {
+		top += text + questionGap
 	}
 	height := v.row.box.MinSize().Height
-	v.row.box.Move(fyne.NewPos(boxAt, questionGap))
-	v.row.box.Resize(fyne.NewSize(boxWidth, height))
+	v.row.box.Move(fyne.NewPos(c.box, top))
+	v.row.box.Resize(fyne.NewSize(c.boxWidth, height))
 	note := v.row.box.line()
-	note.Move(fyne.NewPos(boxAt+4, questionGap+height))
-	note.Resize(fyne.NewSize(size.Width-boxAt-8, note.MinSize().Height))
+	note.Move(fyne.NewPos(c.box+4, top+height))
+	note.Resize(fyne.NewSize(size.Width-c.box-rightEdge, note.MinSize().Height))
 	if e := v.row.evidence; e != nil {
-		e.Move(fyne.NewPos(size.Width-evidenceWidth-rightEdge, questionGap))
+		e.Move(fyne.NewPos(c.evidence, questionGap))
 		e.Resize(fyne.NewSize(evidenceWidth-4, e.MinSize().Height))
 	}
 }
