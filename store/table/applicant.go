@@ -1,6 +1,7 @@
 package table
 
 import (
+	"slices"
 	"strings"
 
 	"weighhouse/model"
@@ -10,7 +11,8 @@ import (
 type Applicant struct {
 	// Ref is the row's own mark, empty where it has none.
 	Ref string
-	// Answers are what could be read; nil where the row does not read at all.
+	// Answers are what could be read; nil where the row does not read at all or
+	// asks for another product.
 	Answers *model.Answers
 	// Problems list what does not read, what is missing and, as warnings, what
 	// is to be questioned. The place of each has the column.
@@ -46,6 +48,11 @@ func (c *Columns) Applicant(row Row, on model.Date) Applicant {
 	add("on", err)
 	client, err := c.kind(strings.ToLower(cell(row.Cells, c.client)))
 	add("client", err)
+	if product := cell(row.Cells, c.product); product != "" && product != c.edition.Scorecard().Card.ProductCode {
+		add("product", problem("file_other_product", "value", product, "expected", c.edition.Scorecard().Card.ProductCode))
+		return a
+	}
+	papers := strings.FieldsFunc(strings.ToLower(cell(row.Cells, c.seen)), func(r rune) bool { return r == ' ' || r == ',' })
 	a.Answers = c.edition.NewAnswers(on, client)
 	unread := uint64(0) // by item
 	for i := range c.questions {
@@ -55,15 +62,20 @@ func (c *Columns) Applicant(row Row, on model.Date) Applicant {
 			unread |= 1 << q.item.Index
 		}
 		add(column, err)
-		seen := cell(row.Cells, q.seen)
-		switch strings.ToLower(seen) {
+		answer.Seen = slices.Contains(papers, q.item.Code)
+		papers = slices.DeleteFunc(papers, func(code string) bool { return code == q.item.Code })
+		switch seen := cell(row.Cells, q.seen); strings.ToLower(seen) {
 		case model.Yes:
-			answer.Seen = answer.State == model.Given
+			answer.Seen = true
 		case model.No, "":
 		default:
 			add(q.item.Code+".seen", problem("not_in_list", "value", seen, "options", "yes, no"))
 		}
+		answer.Seen = answer.Seen && answer.State == model.Given
 		a.Answers.Put(q.item.Index, answer)
+	}
+	if len(papers) > 0 {
+		add("seen", problem("unknown_characteristic", "value", papers[0]))
 	}
 	for i := range c.questions {
 		n := c.questions[i].item.Index

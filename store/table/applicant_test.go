@@ -60,6 +60,8 @@ func TestApplicant(t *testing.T) {
 		{"either case", with("home", "OWN", "has_stall", "Yes"), base},
 		{"day and client", with("on", "2026-01-31", "client", "repeat"), strings.Replace(base, "2026-03-02\nclient\tnew", "2026-01-31\nclient\trepeat", 1)},
 		{"seen", with("home.seen", "yes", "amount.seen", "no", "term.seen", ""), line("home\town", "home\town\tseen")},
+		{"seen, all in one", with("seen", "home, Opened", "home.seen", "no"), strings.Replace(line("home\town", "home\town\tseen"), "2019-05-01", "2019-05-01\tseen", 1)},
+		{"its own product", with("product", "stall"), base},
 		{"a year alone", with("opened", "2019"), line("opened\t2019-05-01", "opened\t2019")},
 		{"unknown", with("home", "unknown", "home.seen", "yes", "household", "Unknown"), strings.Replace(line("home\town", "home\tunknown"), "612.3", "unknown", 1)},
 		{"lines", with("household", "", "household.sales", "40", "household.rent", "200.5", "household.food", "60", "household.food.period", "Month", "household.wages", ""),
@@ -97,6 +99,8 @@ func TestApplicantProblems(t *testing.T) {
 		{"on", "tomorrow", "on:file_not_a_day"},
 		{"client", "old", "client:not_in_list"},
 		{"home.seen", "maybe", "home.seen:not_in_list"},
+		{"seen", "home hous", "seen:unknown_characteristic"},
+		{"product", "farm", "product:file_other_product"},
 		{"household.sales", "5", "household:file_worksheet_twice"},
 		{"late_days", "-5", "late_days:outside_accepted"},
 		{"late_days", "4000", "late_days:outside_accepted"},
@@ -331,5 +335,17 @@ func BenchmarkRead(b *testing.B) {
 		if _, err := r.Read(); err != nil {
 			b.Fatal(err)
 		}
+	}
+}
+
+func TestHeaderOf(t *testing.T) {
+	e := stall(t)
+	header := HeaderOf(e)
+	const want = "ref on client amount term home home.seen has_stall stall_years opened late_days household.sales household.wages household.rent household.food"
+	if got := strings.Join(header, " "); got != want {
+		t.Error(got)
+	}
+	if columns, problems := ColumnsOf(e, header); columns == nil || problems != nil {
+		t.Error(problems)
 	}
 }

@@ -10,21 +10,25 @@ import (
 // Columns tell which column of a table answers which question of an edition.
 // Their names are the codes of the edition's characteristics, and
 //
-//	ref                the applicant's mark in the file, written out again
-//	on                 the day of the application
-//	client             new or repeat
-//	CODE.seen          yes where a paper was seen, no or blank where not
-//	WORKSHEET          one monthly figure, or
-//	WORKSHEET.LINE     the amount of each line, and where it is not the usual
+//	ref                     the applicant's mark in the file, written out again
+//	on                      the day of the application
+//	client                  new or repeat
+//	product                 the product code
+//	CODE.seen               yes where a paper was seen, no or blank where not
+//	seen                    or the codes of all whose papers were seen
+//	WORKSHEET               one monthly figure, or
+//	WORKSHEET.LINE          the amount of each line, and where it is not the usual
 //	WORKSHEET.LINE.period   how often
 //
 // in any order and either case. They may be used by several goroutines.
 type Columns struct {
-	edition         *model.Edition
-	names           []string
-	ref, on, client int // columns; -1 where there is none
-	questions       []question
-	money           int // decimals
+	edition *model.Edition
+	names   []string
+	// Columns, -1 where there is none.
+	ref, on, client, product, seen int
+
+	questions []question
+	money     int // decimals
 }
 
 // A question is one that is asked, and its columns.
@@ -60,7 +64,13 @@ func ColumnsOf(e *model.Edition, header []string) (*Columns, []model.Problem) {
 		}
 		return i
 	}
-	c.ref, c.on, c.client = find("ref"), find("on"), find("client")
+	c.ref, c.on, c.client, c.product, c.seen = find("ref"), find("on"), find("client"), -1, -1
+	if _, taken := e.Item("product"); !taken {
+		c.product = find("product")
+	}
+	if _, taken := e.Item("seen"); !taken {
+		c.seen = find("seen")
+	}
 	answers := 0
 	items := e.Items()
 	for i := range items {
@@ -111,4 +121,26 @@ func columnLetters(i int) string {
 		letters = string(rune('A'+(i-1)%26)) + letters
 	}
 	return letters
+}
+
+// HeaderOf is a header under which every question of an edition can be
+// answered: a worksheet by its lines, and papers seen where they are wanted.
+func HeaderOf(e *model.Edition) []string {
+	header := []string{"ref", "on", "client"}
+	for _, item := range e.Items() {
+		switch item.Kind {
+		case model.Computed:
+			continue
+		case model.Worksheet:
+			for _, line := range item.Lines {
+				header = append(header, item.Code+"."+line.Code)
+			}
+		default:
+			header = append(header, item.Code)
+		}
+		if item.EvidenceNeeded == model.Seen {
+			header = append(header, item.Code+".seen")
+		}
+	}
+	return header
 }

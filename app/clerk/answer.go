@@ -1,0 +1,147 @@
+package main
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"weighhouse/model"
+)
+
+// answerText repeats an answer so that a slip shows: money in words too, a
+// date that cannot be misread, what a worksheet's lines come to.
+func (q *interview) answerText(item *model.Item, a model.Answer) string {
+	switch a.State {
+	case model.StatedUnknown:
+		return q.words.T("box.unknown")
+	case model.Given:
+	default:
+		return ""
+	}
+	terms := q.edition.Scorecard().Terms
+	switch item.Kind {
+	case model.Choice, model.YesNo:
+		return q.label(item, a.Attribute)
+	case model.DateKind:
+		return q.words.Date(a.Date)
+	case model.Worksheet:
+		n := a.Number
+		if a.Lines != nil {
+			n = item.Monthly(a.Lines)
+		}
+		return q.words.Money(n, int(item.Decimals), terms.Currency) + ", " + q.per(model.Month)
+	}
+	switch item.Code {
+	case model.Amount:
+		return q.words.InWords(a.Number, int(terms.MoneyDecimals), terms.Currency)
+	case model.Term:
+		return q.words.Term(int(a.Number/model.One), terms.TermUnit)
+	}
+	return q.words.Number(a.Number, int(item.Decimals))
+}
+
+// soFar says what may still come, where the lender shows it while answering.
+func (q *interview) soFar() {
+	if q.edition.Scorecard().Card.ResultShown != model.WhileAnswering {
+		return
+	}
+	b := q.edition.Bound(q.answers)
+	if len(b.Missing) == 0 {
+		return // the result follows
+	}
+	text := q.words.T("desk.between", "low", b.LowestPD, "high", b.HighestPD)
+	switch {
+	case b.Settled():
+		text += " " + q.words.T("clerk.so_far_settled", "recommendation", q.words.Name(b.Mildest))
+	case b.Narrows >= 0:
+		text += " " + q.words.T("desk.narrows", "number", q.edition.Items()[b.Narrows].Number)
+	}
+	fmt.Fprintln(q.out, indent+text)
+	for i, rule := range q.edition.Rules() {
+		if b.Fires.Has(i) {
+			fmt.Fprintln(q.out, indent+q.rule(rule))
+		}
+	}
+}
+
+// rule words a rule that fires.
+func (q *interview) rule(r model.PolicyRule) string {
+	label, text := q.labels.Rule(r)
+	if text != "" && text != label {
+		label += ". " + text
+	}
+	return q.words.T("desk.rule."+strings.ReplaceAll(string(r.Effect), " ", "_"), "rule", label)
+}
+
+func (q *interview) editionText() string {
+	card := q.edition.Scorecard().Card
+	return q.words.T("clerk.edition", "edition", card.Edition, "date", card.InForceFrom)
+}
+
+// result tells the result of complete answers, and all that must stand by it.
+func (q *interview) result() {
+	r, ok := q.edition.Score(q.answers)
+	if !ok {
+		return // all asks until nothing is missing
+	}
+	card, terms := q.edition.Scorecard().Card, q.edition.Scorecard().Terms
+	band, caution := q.labels.Band(r.Band)
+	say := func(text string) { fmt.Fprintln(q.out, text) }
+	head := func(key string) { say("\n" + q.words.T(key)) }
+	say("\n" + strings.ToUpper(q.words.Name(r.Recommendation)))
+	say(indent + q.words.T("desk.figures", "pd", r.PD, "score", q.words.Score(r.Score), "band", band))
+	say(indent + q.words.PDPlain(r.PD, int(card.DefaultDaysLate), int(card.WithinMonths)))
+	if low, high, ok := q.edition.Range(q.answers); ok {
+		say(indent + q.words.T("clerk.range", "low", low, "high", high))
+	}
+	if r.LargestAmount.Set {
+		say(indent + q.words.T("desk.largest", "amount", q.words.Money(r.LargestAmount.Value, int(terms.MoneyDecimals), terms.Currency)))
+	}
+	if r.Fired != 0 {
+		head("clerk.rules")
+		for i, rule := range q.edition.Rules() {
+			if r.Fired.Has(i) {
+				say(indent + q.rule(rule))
+			}
+		}
+	}
+	if reasons := q.reasons(r); len(reasons) > 0 {
+		head("clerk.reasons")
+		for i, reason := range reasons {
+			say(fmt.Sprintf("%s%d. %s", indent, i+1, reason))
+		}
+	}
+	ground := slices.Concat(q.edition.Check(q.answers), q.edition.Ground(q.answers, q.today))
+	if len(ground) > 0 {
+		head("clerk.ground")
+		for _, p := range ground {
+			say(indent + q.words.Problem(p))
+		}
+	}
+	say("")
+	if caution != "" {
+		say(caution)
+	}
+	say(q.words.T("desk.caution"))
+	say(q.words.T("clerk.telephone_code", "code", q.edition.TelephoneCode()))
+	say(q.words.T("clerk.ask_not_kept"))
+}
+
+// reasons are those of the rules that declined, else of the answers that spoke
+// most against.
+func (q *interview) reasons(r model.Result) (list []string) {
+	for _, rule := range q.edition.DecliningRules(r.Fired) {
+		label, text := q.labels.Rule(rule)
+		if text == "" {
+			text = label
+		}
+		list = append(list, text)
+	}
+	if list != nil {
+		return list
+	}
+	for _, step := range q.edition.Reasons(q.answers) {
+		list = append(list, q.labels.Reason(&q.edition.Items()[step.Index], step.Attribute))
+	}
+	return list
+}

@@ -1,0 +1,410 @@
+package main
+
+import (
+	"bufio"
+	"errors"
+	"fmt"
+	"io"
+	"slices"
+	"strings"
+
+	"weighhouse/app/words"
+	"weighhouse/model"
+)
+
+// ask asks one applicant's questions on the terminal, in the edition's order,
+// says what the answers come to, and keeps nothing.
+func (k *clerk) ask() error {
+	on, err := k.day()
+	if err != nil {
+		return err
+	}
+	edition, err := k.edition()
+	if err != nil {
+		return err
+	}
+	q := newInterview(k, edition, on)
+	fmt.Fprintf(k.out, "%s, %s\n", q.labels.Title(), q.editionText())
+	fmt.Fprintln(k.out, k.words.T("clerk.ask_keys"))
+	err = q.all()
+	if errors.Is(err, io.EOF) {
+		fmt.Fprintln(k.out)
+		return problem("clerk_ended_early")
+	}
+	if err != nil {
+		return err
+	}
+	q.result()
+	return nil
+}
+
+// An interview is one applicant's on a terminal.
+type interview struct {
+	*clerk
+	edition *model.Edition
+	answers *model.Answers
+	labels  *words.Labels
+	lines   *bufio.Scanner
+}
+
+// longestLine is the longest line that is read; nobody types one.
+const longestLine = 1 << 20
+
+func newInterview(k *clerk, e *model.Edition, on model.Date) *interview {
+	q := &interview{clerk: k, edition: e, labels: words.LabelsOf(e, k.words.Style().Language), lines: bufio.NewScanner(k.in)}
+	q.lines.Buffer(nil, longestLine)
+	client := e.Scorecard().Card.For
+	if asked := model.ClientKind(k.option["client"]); client == model.AllClients && asked != "" {
+		client = asked
+	}
+	q.answers = e.NewAnswers(on, client)
+	return q
+}
+
+// errBack asks for the question before.
+var errBack = errors.New("back")
+
+// all asks until every question that applies is answered.
+func (q *interview) all() error {
+	if q.answers.Client == model.AllClients {
+		if err := q.client(); err != nil {
+			return err
+		}
+	}
+	items := q.edition.Items()
+	for i := 0; i < len(items); i++ {
+		if items[i].Kind == model.Computed {
+			continue
+		}
+		if q.answers.Applies(i) == model.Not {
+			fmt.Fprintf(q.out, "\n%s  %s\n%s%s\n", q.place(&items[i]), q.question(&items[i]), indent, q.words.T("desk.not_asked"))
+			continue
+		}
+		err := q.item(&items[i])
+		if err == errBack {
+			i = max(q.before(i), 0) - 1
+			continue
+		}
+		if err != nil {
+			return err
+		}
+		q.soFar()
+	}
+	if q.edition.Scorecard().Card.ResultShown == model.WhenHandedIn {
+		_, err := q.line("\n" + q.words.T("clerk.hand_in") + " ")
+		return err
+	}
+	return nil
+}
+
+// before is the question asked before one, -1 where there is none.
+func (q *interview) before(i int) int {
+	for i--; i >= 0; i-- {
+		if q.edition.Items()[i].Kind != model.Computed && q.answers.Applies(i) != model.Not {
+			break
+		}
+	}
+	return i
+}
+
+const indent = "    "
+
+// line prompts and reads one line; io.EOF at the end of input.
+func (q *interview) line(prompt string) (string, error) {
+	fmt.Fprint(q.out, prompt)
+	if !q.lines.Scan() {
+		if err := q.lines.Err(); err != nil {
+			return "", problem("clerk_line_too_long")
+		}
+		return "", io.EOF
+	}
+	text := strings.TrimSpace(strings.ToValidUTF8(q.lines.Text(), "\uFFFD"))
+	if text == "<" {
+		return "", errBack
+	}
+	return text, nil
+}
+
+func (q *interview) client() error {
+	fmt.Fprintf(q.out, "\n%s\n", q.words.T("desk.client"))
+	for {
+		switch yes, err := q.yesNo(indent); {
+		case err == errBack:
+		case err != nil:
+			return err
+		case yes:
+			q.answers.Client = model.RepeatClients
+			return nil
+		default:
+			q.answers.Client = model.NewClients
+			return nil
+		}
+	}
+}
+
+// yesNo asks until the answer is yes or no.
+func (q *interview) yesNo(prompt string) (bool, error) {
+	options := []string{q.words.T("yes_no.yes"), q.words.T("yes_no.no")}
+	for {
+		text, err := q.line(prompt + strings.Join(options, " / ") + " > ")
+		if err != nil {
+			return false, err
+		}
+		if n := pick(text, options); n >= 0 {
+			return n == 0, nil
+		}
+	}
+}
+
+// item asks one question until its answer can stand.
+func (q *interview) item(item *model.Item) error {
+	fmt.Fprintf(q.out, "\n%s  %s\n", q.place(item), q.question(item))
+	for _, text := range []string{q.labels.Help(item), q.labels.Unit(item)} {
+		if text != "" {
+			fmt.Fprintln(q.out, indent+text)
+		}
+	}
+	q.options(item)
+	old := q.answers.At(item.Index)
+	var sure model.Answer // to be kept by Enter
+	if old.State != model.Missing && q.edition.CheckAnswer(q.answers, item.Index) == nil {
+		sure = old
+		fmt.Fprintln(q.out, indent+q.words.T("clerk.ask_now", "answer", q.answerText(item, old)))
+	}
+	for {
+		answer, err := q.read(item, sure)
+		if err != nil {
+			p, ok := err.(model.Problem)
+			if !ok {
+				return err
+			}
+			fmt.Fprintln(q.out, indent+q.words.Sentence(p))
+			continue
+		}
+		if answer.State == model.Given {
+			if text := q.answerText(item, answer); text != "" {
+				fmt.Fprintln(q.out, indent+"= "+text)
+			}
+		}
+		try := q.answers.Clone()
+		try.Put(item.Index, answer)
+		problems := q.edition.CheckAnswer(try, item.Index)
+		i := slices.IndexFunc(problems, func(p model.Problem) bool { return !p.Warning })
+		switch {
+		case i >= 0:
+			fmt.Fprintln(q.out, indent+q.words.Sentence(problems[i]))
+			sure = model.Answer{}
+			continue
+		case len(problems) > 0 && q.edition.AnswerText(item.Index, answer) != q.edition.AnswerText(item.Index, sure):
+			fmt.Fprintln(q.out, indent+q.words.T("box.sure", "question", q.words.Sentence(problems[0])))
+			sure = answer
+			continue
+		}
+		if answer.State == model.Given && item.EvidenceNeeded == model.Seen {
+			if answer.Seen, err = q.seen(item); err != nil {
+				return err
+			}
+		}
+		q.answers.Put(item.Index, answer)
+		return nil
+	}
+}
+
+func (q *interview) seen(item *model.Item) (bool, error) {
+	text := q.words.T("clerk.ask_seen")
+	if papers := q.labels.Papers(item); papers != "" {
+		text = q.words.T("clerk.ask_seen_papers", "papers", papers)
+	}
+	return q.yesNo(indent + text + " ")
+}
+
+// place is such as "3 of 14".
+func (q *interview) place(item *model.Item) string {
+	most := 0
+	for _, other := range q.edition.Items() {
+		most = max(most, other.Number)
+	}
+	return q.words.T("clerk.ask_place", "number", item.Number, "all", most)
+}
+
+// question is what is asked; the reserved ones the workbook need not word.
+func (q *interview) question(item *model.Item) string {
+	text := q.labels.Question(item)
+	switch {
+	case text != "":
+		return text
+	case item.Code == model.Amount:
+		return q.words.T("desk.ask_amount")
+	case item.Code == model.Term:
+		return q.words.T("desk.ask_term")
+	}
+	return item.Code
+}
+
+// options lists what may be answered.
+func (q *interview) options(item *model.Item) {
+	switch item.Kind {
+	case model.Choice, model.YesNo:
+		labels, _ := q.attributes(item)
+		for i, label := range labels {
+			fmt.Fprintf(q.out, "%s%2d  %s\n", indent, i+1, label)
+		}
+	case model.Worksheet:
+		fmt.Fprintln(q.out, indent+q.words.T("clerk.ask_lines"))
+	}
+	if item.UnknownAllowed {
+		fmt.Fprintf(q.out, "%s ?  %s\n", indent, q.words.T("box.unknown"))
+	}
+}
+
+// attributes are the labels of a choice's answers, and their places among
+// Item.Attributes.
+func (q *interview) attributes(item *model.Item) (labels []string, places []int) {
+	for i, a := range item.Attributes {
+		switch a.Code {
+		case model.Unknown, model.NotApplicable, model.NothingLeft:
+			continue
+		}
+		labels, places = append(labels, q.label(item, i)), append(places, i)
+	}
+	return labels, places
+}
+
+func (q *interview) label(item *model.Item, attribute int) string {
+	if label := q.labels.Attribute(item, attribute); label != "" {
+		return label
+	}
+	code := item.Attributes[attribute].Code
+	if item.Kind == model.YesNo {
+		return q.words.T("yes_no." + code)
+	}
+	return code
+}
+
+// read reads one answer; Enter alone keeps sure. Problems are Problems
+// without a place.
+func (q *interview) read(item *model.Item, sure model.Answer) (model.Answer, error) {
+	if item.Kind == model.Worksheet {
+		return q.worksheet(item, sure)
+	}
+	text, err := q.line(indent + "> ")
+	switch {
+	case err != nil:
+		return model.Answer{}, err
+	case text == "" && sure.State != model.Missing:
+		return sure, nil
+	case text == "":
+		return model.Answer{}, problem("clerk_ask_empty")
+	case text == "?":
+		return q.unknown(item)
+	}
+	a := model.Answer{State: model.Given}
+	switch item.Kind {
+	case model.Choice, model.YesNo:
+		labels, places := q.attributes(item)
+		n := pick(text, labels)
+		if n < 0 {
+			return a, problem("clerk_ask_pick", "value", text)
+		}
+		a.Attribute = places[n]
+	case model.DateKind:
+		a.Date, err = q.words.ParseDate(text, true)
+	default:
+		a.Number, err = q.words.ParseNumber(text, int(item.Decimals))
+	}
+	return a, err
+}
+
+func (q *interview) unknown(item *model.Item) (model.Answer, error) {
+	if !item.UnknownAllowed {
+		return model.Answer{}, problem("unknown_not_allowed")
+	}
+	return model.Answer{State: model.StatedUnknown}, nil
+}
+
+// worksheet reads a worksheet line by line, or its one monthly figure after
+// an equals sign.
+func (q *interview) worksheet(item *model.Item, sure model.Answer) (model.Answer, error) {
+	a := model.Answer{State: model.Given, Lines: make([]model.Money, len(item.Lines))}
+	for i := 0; i < len(item.Lines); {
+		line := item.Lines[i]
+		text, err := q.line(fmt.Sprintf("%s%s, %s, %s > ", indent, q.labels.Line(item, i), q.words.Name(line.Flow), q.per(line.Period)))
+		switch {
+		case err == errBack && i > 0:
+			i--
+			continue
+		case err != nil:
+			return a, err
+		case text == "" && i == 0 && sure.State != model.Missing:
+			return sure, nil
+		case text == "?":
+			return q.unknown(item)
+		case strings.HasPrefix(text, "="):
+			n, err := q.words.ParseNumber(text[1:], int(item.Decimals))
+			return model.Answer{State: model.Given, Number: n}, err
+		case text == "":
+			a.Lines[i] = model.Money{}
+		default:
+			money, err := q.money(text, line.Period)
+			if p, ok := err.(model.Problem); ok {
+				fmt.Fprintln(q.out, indent+q.words.Sentence(p))
+				continue
+			}
+			a.Lines[i] = money
+		}
+		i++
+	}
+	if !slices.ContainsFunc(a.Lines, func(m model.Money) bool { return m.Set }) {
+		return a, problem("clerk_ask_no_line")
+	}
+	return a, nil
+}
+
+func (q *interview) per(p model.Period) string {
+	return q.words.T("box.per", "period", q.words.Name(p))
+}
+
+// money reads an amount and, where it is not the usual one, its period's name
+// or first letters: "40", "40 week".
+func (q *interview) money(text string, usual model.Period) (model.Money, error) {
+	m := model.Money{Set: true}
+	amount := strings.TrimRight(text, "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZáéíóúñâêîôûàèùçÁÉÍÓÚÑ")
+	if word := text[len(amount):]; word != "" {
+		var names []string
+		for _, p := range usual.Options() {
+			names = append(names, q.words.Name(model.Period(p)))
+		}
+		n := pick(word, names)
+		if n < 0 {
+			return m, problem("clerk_ask_period", "value", word, "options", strings.Join(names, ", "))
+		}
+		if p := model.Period(usual.Options()[n]); p != usual {
+			m.Period = p
+		}
+	}
+	var err error
+	m.Amount, err = q.words.ParseNumber(strings.TrimRight(amount, " /"), int(q.edition.Scorecard().Terms.MoneyDecimals))
+	if err == nil && m.Amount < 0 {
+		err = problem("file_line_negative")
+	}
+	return m, err
+}
+
+// pick finds the option that a text names: by its number from 1, its whole
+// text, or first letters that only it has; -1 where none is.
+func pick(text string, options []string) int {
+	folded := words.Fold(text)
+	found := -1
+	for i, option := range options {
+		option = words.Fold(option)
+		switch {
+		case text == fmt.Sprint(i+1), folded == option:
+			return i
+		case folded != "" && strings.HasPrefix(option, folded) && found == -1:
+			found = i
+		case folded != "" && strings.HasPrefix(option, folded):
+			found = -2
+		}
+	}
+	return max(found, -1)
+}

@@ -1,0 +1,230 @@
+package main
+
+import (
+	"bytes"
+	"context"
+	"encoding/csv"
+	"fmt"
+	"io"
+	"os"
+	"runtime"
+	"strings"
+
+	"weighhouse/app/words"
+	"weighhouse/model"
+	"weighhouse/store/table"
+)
+
+// resultHeader is the header of a table of results.
+var resultHeader = []string{"ref", "log_odds", "pd", "pd_low", "pd_high", "score", "band", "recommendation", "rules", "reasons", "problem"}
+
+// score scores a table of applicants, in the order of its rows.
+func (k *clerk) score() error {
+	on, err := k.day()
+	if err != nil {
+		return err
+	}
+	edition, err := k.edition()
+	if err != nil {
+		return err
+	}
+	in := k.in
+	if path := k.option["in"]; path != "-" {
+		f, err := os.Open(path)
+		if err != nil {
+			return cannot(err)
+		}
+		defer f.Close()
+		in = f
+	}
+	rows, err := table.NewReader(in)
+	if err != nil {
+		return cannot(err)
+	}
+	columns, problems := table.ColumnsOf(edition, rows.Header())
+	problems = append(problems, edition.Ground(edition.NewAnswers(on, ""), k.today)...)
+	for _, p := range problems {
+		if p.Warning {
+			k.note(p)
+		} else {
+			fmt.Fprintln(k.err, k.words.Problem(p))
+		}
+	}
+	if columns == nil {
+		return errRefused
+	}
+	out, err := k.create(k.option["out"], k.option["in"], k.option["card"])
+	if err != nil {
+		return err
+	}
+	s := &scorer{edition: edition, columns: columns, words: k.words, rules: edition.Rules(), on: on, today: k.today}
+	bar := k.progress()
+	scored, refused, err := s.all(k.ctx, rows, out, func(n int) { bar.tell("clerk.progress_score", "n", n) })
+	bar.end()
+	if err = out.finish(err); err != nil {
+		return err
+	}
+	fmt.Fprintln(k.err, k.words.T("clerk.scored", "n", scored))
+	if refused > 0 {
+		fmt.Fprintln(k.err, k.words.T("clerk.not_scored", "n", refused))
+	}
+	if refused > 0 && scored == 0 {
+		return errRefused
+	}
+	return nil
+}
+
+// A scorer turns rows into rows of results. Several goroutines use it at once.
+type scorer struct {
+	edition   *model.Edition
+	columns   *table.Columns
+	words     *words.Reader
+	rules     []model.PolicyRule
+	on, today model.Date
+}
+
+// A batch is some rows on their way from the reader through a worker to the
+// writer.
+type batch struct {
+	rows            []table.Row
+	text            bytes.Buffer
+	scored, refused int
+	done            chan struct{}
+}
+
+const batchRows = 256
+
+// all scores every row, each processor a batch at a time, and writes the
+// results in the order of the rows. No more batches are under way than twice
+// the processors, so memory does not grow with the table.
+func (s *scorer) all(ctx context.Context, in *table.Reader, out io.Writer, tell func(rows int)) (scored, refused int, err error) {
+	ctx, cancel := context.WithCancel(ctx)
+	defer cancel()
+	workers := runtime.GOMAXPROCS(0)
+	order := make(chan *batch, 2*workers) // as read
+	work := make(chan *batch, 2*workers)
+	var reading error
+	go func() {
+		defer close(order)
+		defer close(work)
+		for reading == nil {
+			b := &batch{done: make(chan struct{})}
+			for len(b.rows) < batchRows && reading == nil {
+				var row table.Row
+				if row, reading = in.Read(); reading == nil {
+					b.rows = append(b.rows, row)
+				}
+			}
+			select {
+			case order <- b:
+				work <- b
+			case <-ctx.Done():
+				return
+			}
+		}
+	}()
+	for range workers {
+		go func() {
+			for b := range work {
+				s.batch(b)
+				close(b.done)
+			}
+		}()
+	}
+	header := csv.NewWriter(out)
+	header.Write(resultHeader)
+	if header.Flush(); header.Error() != nil {
+		return 0, 0, cannot(header.Error())
+	}
+	for {
+		var b *batch
+		select {
+		case b = <-order:
+		case <-ctx.Done():
+			return scored, refused, problem("clerk_interrupted")
+		}
+		if b == nil {
+			break
+		}
+		<-b.done
+		scored, refused = scored+b.scored, refused+b.refused
+		if _, err := out.Write(b.text.Bytes()); err != nil {
+			return scored, refused, cannot(err)
+		}
+		tell(scored + refused)
+	}
+	if reading != io.EOF {
+		return scored, refused, cannot(reading)
+	}
+	return scored, refused, nil
+}
+
+func (s *scorer) batch(b *batch) {
+	w := csv.NewWriter(&b.text)
+	for _, row := range b.rows {
+		line, ok := s.row(row)
+		if ok {
+			b.scored++
+		} else {
+			b.refused++
+		}
+		w.Write(line)
+	}
+	w.Flush() // a buffer takes everything
+}
+
+// row is a row of the table of results, and whether there is a result.
+func (s *scorer) row(row table.Row) (cells []string, scored bool) {
+	a := s.columns.Applicant(row, s.on)
+	cells = make([]string, len(resultHeader))
+	cells[0] = a.Ref
+	if !a.Refused() {
+		if r, ok := s.edition.Score(a.Answers); ok {
+			scored = true
+			s.figures(cells[1:], a.Answers, r)
+			for _, p := range s.edition.Ground(a.Answers, s.today) {
+				if p.Place.Column != "" { // the others are told once, of all
+					a.Problems = append(a.Problems, p)
+				}
+			}
+		}
+	}
+	var sentences []string
+	for _, p := range a.Problems {
+		sentences = append(sentences, s.words.Problem(p))
+	}
+	cells[len(cells)-1] = strings.Join(sentences, " ")
+	return cells, scored
+}
+
+// figures fills in log_odds to reasons, in canonical text and codes.
+func (s *scorer) figures(cells []string, a *model.Answers, r model.Result) {
+	cells[0], cells[1] = r.LogOdds.String(), r.PD.String()
+	if low, high, ok := s.edition.Range(a); ok {
+		cells[2], cells[3] = low.String(), high.String()
+	}
+	cells[4] = r.Score.String()
+	cells[5] = s.edition.Scorecard().Bands[r.Band].Code
+	cells[6] = string(r.Recommendation)
+	var fired, reasons []string
+	for i, rule := range s.rules {
+		if r.Fired.Has(i) {
+			fired = append(fired, rule.Code)
+		}
+	}
+	cells[7] = strings.Join(fired, " ")
+	for _, rule := range s.edition.DecliningRules(r.Fired) {
+		reasons = append(reasons, "rule."+rule.Code)
+	}
+	if reasons == nil {
+		for _, step := range s.edition.Reasons(a) {
+			item := &s.edition.Items()[step.Index]
+			reason := item.Code
+			if step.Attribute >= 0 {
+				reason += "." + item.Attributes[step.Attribute].Code
+			}
+			reasons = append(reasons, reason)
+		}
+	}
+	cells[8] = strings.Join(reasons, " ")
+}
