@@ -13,6 +13,19 @@ import (
 	"weighhouse/model"
 )
 
+// profile is where LibreOffice keeps its settings for these tests.
+var profile string
+
+func TestMain(m *testing.M) {
+	var err error
+	if profile, err = os.MkdirTemp("", "profile"); err != nil {
+		panic(err)
+	}
+	code := m.Run()
+	os.RemoveAll(profile)
+	os.Exit(code)
+}
+
 // savedBy has a spreadsheet program open files, work out their formulas and
 // save them again.
 func savedBy(t *testing.T, program string, files [][]byte) [][]byte {
@@ -38,7 +51,7 @@ func savedBy(t *testing.T, program string, files [][]byte) [][]byte {
 	var runs [][]string
 	switch program {
 	case "soffice":
-		runs = append(runs, append([]string{"-env:UserInstallation=file://" + dir + "/profile", "--headless", "--convert-to", "xlsx", "--outdir", out}, names...))
+		runs = append(runs, append([]string{"-env:UserInstallation=file://" + profile, "--headless", "--convert-to", "xlsx", "--outdir", out}, names...))
 	case "ssconvert":
 		for i, name := range names {
 			runs = append(runs, []string{"--recalc", name, filepath.Join(out, fmt.Sprintf("%d.xlsx", i))})
@@ -195,12 +208,12 @@ func answered(t *testing.T, e *model.Edition, check model.Check) *model.Answers 
 func TestTryItPayments(t *testing.T) {
 	var files [][]byte
 	var editions []*model.Edition
-	for i := range 12 {
+	for i := range 6 {
 		s := kinds(t)
 		s.Terms.Repayment = model.Repayment(model.EqualPayments.Options()[i%3])
 		s.Terms.Method = model.InterestMethod(model.Flat.Options()[i/3%2])
 		s.Terms.TermUnit = model.TermUnit(model.Weeks.Options()[(i+i/3)%3])
-		s.Terms.PaymentRoundedTo = model.Maybe[model.Number]{Value: model.Whole(5), Set: i >= 6}
+		s.Terms.PaymentRoundedTo = model.Maybe[model.Number]{Value: model.Whole(5), Set: i%4 >= 2}
 		if i%2 == 1 {
 			s.Terms.RatePer, s.Terms.Rate = model.PerMonth, 30_000_000
 		}

@@ -62,8 +62,9 @@ func (b *builder) tryIt(s model.Scorecard, e *model.Edition) {
 		if name != "" {
 			b.text(tryItSheet, i+1, 1, name, b.header)
 		}
-		b.width(tryItSheet, i+1, []float64{5, 20, 48, 18, 16, 16, 12, 18, 16, 3, 34, 18}[i])
+		b.width(tryItSheet, i+1, []float64{5, 20, questionWidth, 18, 16, 16, 12, 18, 16, 3, 40, 18}[i])
 	}
+	b.do(b.f.SetRowHeight(tryItSheet, 1, 30))
 	b.note(tryItSheet, refOf(tryAnswer, 1), "Type answers in this column: the code of a choice, yes or no, a number, a date, or unknown where that is allowed. A worksheet takes one monthly figure.")
 	for i := range e.Items() {
 		t.item(&e.Items()[i])
@@ -71,6 +72,9 @@ func (b *builder) tryIt(s model.Scorecard, e *model.Edition) {
 	t.results()
 	b.page(tryItSheet, true)
 }
+
+// questionWidth is in characters.
+const questionWidth = 48.0
 
 // trial is the sheet in the making.
 type trial struct {
@@ -117,8 +121,10 @@ func (t *trial) item(item *model.Item) {
 	if item.Number > 0 {
 		t.do(t.f.SetCellInt(tryItSheet, refOf(tryNumber, r), int64(item.Number)))
 	}
+	t.do(t.f.SetCellStyle(tryItSheet, refOf(1, r), refOf(tryLogOdds, r), t.locked))
 	t.string(tryItSheet, refOf(tryCode, r), item.Code)
-	t.text(tryItSheet, tryQuestion, r, item.Question, t.locked)
+	t.string(tryItSheet, refOf(tryQuestion, r), item.Question)
+	t.height(tryItSheet, r, []string{item.Question}, []float64{questionWidth})
 	if item.Kind == model.Computed {
 		t.computed(item, r)
 	} else {
@@ -296,10 +302,12 @@ func wholeYears(on, born string) string {
 func (t *trial) results() {
 	last := len(t.e.Items()) + 1
 	line := func(row int, name, format string, args ...any) {
-		t.string(tryItSheet, refOf(tryItem, row), name)
+		t.text(tryItSheet, tryItem, row, name, t.name)
 		t.formula(tryResult, row, format, args...)
+		t.do(t.f.SetCellStyle(tryItSheet, refOf(tryResult, row), refOf(tryResult, row), t.locked))
 	}
 	shown := func(row int, s *excelize.Style) {
+		s.Alignment = &excelize.Alignment{Horizontal: "left"}
 		id, err := t.f.NewStyle(s)
 		t.do(err)
 		t.do(t.f.SetCellStyle(tryItSheet, refOf(tryResult, row), refOf(tryResult, row), id))

@@ -64,8 +64,10 @@ type builder struct {
 	f   *excelize.File
 	err error
 
-	header, locked, heading int         // styles
-	open                    map[int]int // unlocked styles by number format
+	// Styles: headers that are locked and not, names of items, other locked
+	// cells, numbers in columns, and unlocked cells by number format.
+	header, heading, name, locked, number int
+	open                                  map[int]int
 }
 
 func (b *builder) do(err error) {
@@ -104,17 +106,22 @@ const (
 
 func (b *builder) styles() {
 	style := func(s *excelize.Style) int {
-		s.Alignment = &excelize.Alignment{Vertical: "top", WrapText: true}
+		if s.Alignment == nil {
+			s.Alignment = &excelize.Alignment{Horizontal: "left", WrapText: true}
+		}
+		s.Alignment.Vertical = "top"
 		id, err := b.f.NewStyle(s)
 		b.do(err)
 		return id
 	}
-	bold := &excelize.Font{Bold: true}
+	bold := &excelize.Font{Bold: true, Family: "Calibri", Size: 11}
 	rule := []excelize.Border{{Type: "bottom", Color: "000000", Style: 1}}
 	unlocked := &excelize.Protection{Locked: false}
 	b.header = style(&excelize.Style{Font: bold, Border: rule, NumFmt: textFormat})
 	b.heading = style(&excelize.Style{Font: bold, Border: rule, NumFmt: textFormat, Protection: unlocked})
+	b.name = style(&excelize.Style{Font: bold, NumFmt: textFormat, Alignment: &excelize.Alignment{Horizontal: "left"}})
 	b.locked = style(&excelize.Style{})
+	b.number = style(&excelize.Style{Protection: unlocked, Alignment: &excelize.Alignment{Horizontal: "right", Indent: 1}})
 	b.open[generalFormat] = style(&excelize.Style{Protection: unlocked})
 	b.open[textFormat] = style(&excelize.Style{NumFmt: textFormat, Protection: unlocked})
 	day := fmt.Sprintf("[<%d]0;d mmm yyyy", firstDay)
@@ -143,21 +150,25 @@ func (b *builder) sheet(form model.SheetForm, sheet model.Sheet) {
 	b.page(sheet.Name, true)
 }
 
+// Widths of the two columns of a sheet of items, in characters.
+const itemWidth, valueWidth = 34.0, 56.0
+
 // items writes a sheet of items: names in column A, values in column B.
 func (b *builder) items(form model.SheetForm, sheet model.Sheet) {
-	b.width(sheet.Name, 1, 34)
-	b.width(sheet.Name, 2, 50)
+	b.width(sheet.Name, 1, itemWidth)
+	b.width(sheet.Name, 2, valueWidth)
 	for i, name := range sheet.Columns {
 		b.text(sheet.Name, i+1, 1, name, b.header)
 		b.note(sheet.Name, refOf(i+1, 1), notes[sheet.Name][name])
 	}
 	for i, row := range sheet.Rows {
 		column, ref := form.Columns[i], refOf(2, i+2)
-		b.text(sheet.Name, 1, i+2, row[0], b.header)
+		b.text(sheet.Name, 1, i+2, row[0], b.name)
 		b.note(sheet.Name, refOf(1, i+2), notes[sheet.Name][column.Name])
 		b.do(b.f.SetCellStyle(sheet.Name, ref, ref, b.open[formatFor(column.Kind)]))
 		b.value(sheet.Name, 2, i+2, row[1], column.Kind)
 		b.dropDown(sheet.Name, ref, column)
+		b.height(sheet.Name, i+2, row, []float64{itemWidth, valueWidth})
 	}
 }
 
@@ -165,11 +176,15 @@ func (b *builder) items(form model.SheetForm, sheet model.Sheet) {
 func (b *builder) rows(form model.SheetForm, sheet model.Sheet) {
 	last := max(spareRows, len(sheet.Rows)+100)
 	free := form.Name == "Checks" || form.Name == "Covariance"
+	widths := columnWidths(sheet)
 	for i, name := range sheet.Columns {
 		column, fixed := columnOf(form, name)
 		letter, style := columnName(i+1), b.open[formatFor(column.Kind)]
+		if column.Kind == model.NumberColumn {
+			style = b.number
+		}
 		b.do(b.f.SetColStyle(sheet.Name, letter, style))
-		b.width(sheet.Name, i+1, columnWidth(sheet, i))
+		b.width(sheet.Name, i+1, widths[i])
 		if fixed {
 			b.text(sheet.Name, i+1, 1, name, b.header)
 			b.note(sheet.Name, refOf(i+1, 1), notes[sheet.Name][noteName(name)])
@@ -183,11 +198,13 @@ func (b *builder) rows(form model.SheetForm, sheet model.Sheet) {
 		b.do(b.f.SetColStyle(sheet.Name, columnName(from)+":"+columnName(to), b.open[generalFormat]))
 		b.do(b.f.SetCellStyle(sheet.Name, refOf(from, 1), refOf(to, 1), b.heading))
 	}
+	b.height(sheet.Name, 1, sheet.Columns, widths)
 	for r, row := range sheet.Rows {
 		for i, text := range row {
 			column, _ := columnOf(form, sheet.Columns[i])
 			b.value(sheet.Name, i+1, r+2, text, column.Kind)
 		}
+		b.height(sheet.Name, r+2, row, widths)
 	}
 }
 
@@ -205,18 +222,57 @@ func columnOf(form model.SheetForm, name string) (model.Column, bool) {
 // noteName joins the numbered columns: Part 1 and Part 2 have one note.
 func noteName(column string) string { return strings.TrimRight(column, " 0123456789") }
 
-// columnWidth fits the longest line of a column, within reason.
-func columnWidth(sheet model.Sheet, i int) float64 {
-	longest := 10
-	for _, row := range sheet.Rows {
-		for line := range strings.Lines(row[i]) {
-			longest = max(longest, utf8.RuneCountInString(line)+2)
+// pageWidth is how many characters of a landscape page can still be read.
+const pageWidth = 170
+
+// columnWidths fit the longest line of each column, but share a page's width.
+func columnWidths(sheet model.Sheet) []float64 {
+	most := 60
+	for {
+		widths := make([]float64, len(sheet.Columns))
+		sum := 0.0
+		for i, name := range sheet.Columns {
+			least, longest := 8, 0
+			for _, word := range strings.Fields(name) {
+				least = max(least, len(word)+3)
+			}
+			for _, row := range sheet.Rows {
+				for line := range strings.Lines(row[i]) {
+					longest = max(longest, utf8.RuneCountInString(line)+2)
+				}
+			}
+			widths[i] = float64(max(least, min(longest, most)))
+			sum += widths[i]
+		}
+		if most -= 4; sum <= pageWidth || most < 16 {
+			return widths
 		}
 	}
-	for _, word := range strings.Fields(sheet.Columns[i]) {
-		longest = max(longest, len(word)+3)
+}
+
+// height makes a row as high as its texts need when they are wrapped: not
+// every program works that out when it opens a file.
+func (b *builder) height(sheet string, row int, texts []string, widths []float64) {
+	most := 1
+	for i, text := range texts {
+		lines := 0
+		for line := range strings.Lines(text) {
+			lines++
+			room := int(widths[i]) - 2
+			for _, word := range strings.Fields(line) {
+				if n := utf8.RuneCountInString(word) + 1; room >= n {
+					room -= n
+				} else {
+					lines++
+					room = int(widths[i]) - 2 - n
+				}
+			}
+		}
+		most = max(most, lines)
 	}
-	return float64(min(longest, 48))
+	if most > 1 {
+		b.do(b.f.SetRowHeight(sheet, row, float64(min(15*most, 400))))
+	}
 }
 
 // page sets what every sheet has: the header row always in sight and on every
@@ -333,18 +389,19 @@ func commentHeight(text string) uint {
 func (b *builder) example(s model.Scorecard) {
 	_, err := b.f.NewSheet(exampleSheet)
 	b.do(err)
-	b.text(exampleSheet, 1, 1, "A worked example, sheet by sheet. Nothing on this sheet is read.", b.header)
+	b.text(exampleSheet, 1, 1, "A worked example, sheet by sheet. Nothing on this sheet is read.", b.name)
 	row := 3
 	for _, sheet := range s.Sheets() {
 		if len(sheet.Rows) == 0 {
 			continue
 		}
 		form, _ := formOf(sheet.Name)
-		b.text(exampleSheet, 1, row, sheet.Name, b.header)
+		b.text(exampleSheet, 1, row, sheet.Name, b.name)
 		row++
 		for i, name := range sheet.Columns {
 			b.text(exampleSheet, i+1, row, name, b.header)
 		}
+		b.height(exampleSheet, row, sheet.Columns, exampleWidths(len(sheet.Columns)))
 		for r, cells := range sheet.Rows {
 			row++
 			for i, text := range cells {
@@ -352,12 +409,21 @@ func (b *builder) example(s model.Scorecard) {
 				if form.Items {
 					column = form.Columns[r]
 				}
+				ref := refOf(i+1, row)
+				b.do(b.f.SetCellStyle(exampleSheet, ref, ref, b.locked))
 				b.value(exampleSheet, i+1, row, text, column.Kind)
 			}
+			b.height(exampleSheet, row, cells, exampleWidths(len(cells)))
 		}
 		row += 2
 	}
-	b.width(exampleSheet, 1, 24)
-	b.do(b.f.SetColWidth(exampleSheet, "B", "W", 18))
+	for i, width := range exampleWidths(23) {
+		b.width(exampleSheet, i+1, width)
+	}
 	b.page(exampleSheet, false)
+}
+
+// exampleWidths are the widths of the example's first n columns.
+func exampleWidths(n int) []float64 {
+	return append([]float64{itemWidth}, slices.Repeat([]float64{20}, n-1)...)
 }
