@@ -2,8 +2,6 @@ package store
 
 import (
 	"testing"
-
-	"weighhouse/model"
 )
 
 // Benchmarks with 200,000 results, the size that the promises are for:
@@ -14,9 +12,9 @@ func BenchmarkLarge(b *testing.B) {
 	dir := b.TempDir()
 	s, e := practice(b, dir, Options{})
 	for n := 0; n < results; n += batch {
-		var all []*model.Answers
+		var all []Complete
 		for i := range batch {
-			all = append(all, nth(e, n+i))
+			all = append(all, Complete{Answers: nth(e, n+i)})
 		}
 		must(s.KeepResults(b.Context(), all))
 	}
@@ -54,7 +52,7 @@ func BenchmarkLarge(b *testing.B) {
 	})
 	b.Run("keep", func(b *testing.B) {
 		for i := 0; b.Loop(); i++ {
-			must(s.KeepResult(b.Context(), nth(e, i)))
+			must(s.KeepResult(b.Context(), Complete{Answers: nth(e, i)}))
 		}
 	})
 	b.Run("prove", func(b *testing.B) {

@@ -25,7 +25,7 @@ func TestADoubtfulClock(t *testing.T) {
 			s, e := practice(t, t.TempDir(), clock.options())
 			clock.set(c.now)
 			_, todayErr := s.branch.Today()
-			_, keepErr := s.KeepResult(t.Context(), nth(e, 1))
+			_, keepErr := s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)})
 			_, forceErr := s.InForce(t.Context(), "stall", model.NewClients, day("2026-12-01"))
 			if !c.doubtful {
 				if todayErr != nil || keepErr != nil || forceErr != nil {
@@ -48,7 +48,7 @@ func TestADoubtfulClock(t *testing.T) {
 			if today := must(s.branch.Today()); today != day("2026-12-03") {
 				t.Errorf("today %v", today)
 			}
-			kept := must(s.KeepResult(t.Context(), nth(e, 1)))
+			kept := must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 			if got := kept.At.Format("2006-01-02 15:04"); got != "2026-12-03"+c.now[10:] {
 				t.Errorf("kept at %s", got)
 			}
@@ -70,7 +70,7 @@ func TestATrueDateBeforeTheLastEntryIsTaken(t *testing.T) {
 	if err := s.ConfirmDate(t.Context(), day("2026-12-01")); err != nil {
 		t.Fatal(err)
 	}
-	must(s.KeepResult(t.Context(), nth(e, 1)))
+	must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 	s.branch.Close()
 	s = openPractice(t, dir, clock.options()) // and it stays believed
 	must(s.branch.Today())

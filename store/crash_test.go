@@ -49,7 +49,7 @@ func keepUntilKilled(dir string) {
 	s := must(b.SignInPractice(ctx))
 	e := must(s.InForce(ctx, "stall", model.NewClients, day("2026-12-01")))
 	for n := 0; ; n++ {
-		k := must(s.KeepResult(ctx, nth(e, n)))
+		k := must(s.KeepResult(ctx, Complete{Answers: nth(e, n)}))
 		fmt.Println("kept", k.ID, k.LogOdds)
 		if n%3 == 0 {
 			if err := s.ClearResult(ctx, k.ID); err != nil {

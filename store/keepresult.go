@@ -3,16 +3,26 @@ package store
 import (
 	"context"
 	"strconv"
+	"strings"
+
+	"golang.org/x/text/unicode/norm"
 
 	"weighhouse/model"
 	"weighhouse/model/duty"
 )
 
+// Complete is what a result is kept of.
+type Complete struct {
+	// Applicant is who it is about; white space is made single.
+	Applicant string
+	Answers   *model.Answers
+}
+
 // KeepResult keeps complete answers with what their edition says of them.
 // The codes: answers_incomplete, edition_not_released, and answers_unreadable
 // where the text of the answers would not give the same result again.
-func (s *Session) KeepResult(ctx context.Context, answers *model.Answers) (Kept, error) {
-	kept, err := s.KeepResults(ctx, []*model.Answers{answers})
+func (s *Session) KeepResult(ctx context.Context, c Complete) (Kept, error) {
+	kept, err := s.KeepResults(ctx, []Complete{c})
 	if err != nil {
 		return Kept{}, err
 	}
@@ -20,10 +30,10 @@ func (s *Session) KeepResult(ctx context.Context, answers *model.Answers) (Kept,
 }
 
 // KeepResults keeps several results, all of them or none.
-func (s *Session) KeepResults(ctx context.Context, all []*model.Answers) ([]Kept, error) {
+func (s *Session) KeepResults(ctx context.Context, all []Complete) ([]Kept, error) {
 	var kept []Kept
-	for _, answers := range all {
-		k, err := s.score(answers)
+	for _, c := range all {
+		k, err := s.score(c)
 		if err != nil {
 			return nil, err
 		}
@@ -46,8 +56,10 @@ func (s *Session) KeepResults(ctx context.Context, all []*model.Answers) ([]Kept
 
 // score works a result out of a copy read back from the answers' text, so
 // that what is kept gives itself again.
-func (s *Session) score(answers *model.Answers) (k Kept, err error) {
+func (s *Session) score(c Complete) (k Kept, err error) {
+	answers := c.Answers
 	edition := answers.Edition()
+	k.Applicant = norm.NFC.String(strings.Join(strings.Fields(c.Applicant), " "))
 	result, complete := edition.Score(answers)
 	if !complete {
 		return k, refuse("answers_incomplete")

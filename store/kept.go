@@ -16,6 +16,9 @@ type Kept struct {
 	At      time.Time
 	By      string // the person's name
 	Edition model.Fingerprint
+	// Applicant is who it is about, as the officer wrote it; empty where no
+	// name was taken.
+	Applicant string
 	// Answers are canonical text; Edition.ParseAnswers reads it.
 	Answers        string
 	LogOdds        model.LogOdds
@@ -36,7 +39,7 @@ const keptHead = "weighhouse result 1"
 
 // text is what is sealed and committed to.
 func (k *Kept) text() string {
-	return keptHead + "\nedition\t" + k.Edition.String() + "\nlog_odds\t" + k.LogOdds.String() +
+	return keptHead + "\nedition\t" + k.Edition.String() + "\napplicant\t" + k.Applicant + "\nlog_odds\t" + k.LogOdds.String() +
 		"\npd\t" + k.PD.String() + "\nscore\t" + k.Score.String() + "\nband\t" + k.Band +
 		"\nrecommendation\t" + string(k.Recommendation) + "\nanswers\n" + k.Answers
 }
@@ -47,16 +50,17 @@ var errNotKept = errors.New("store: not the text of a result")
 func (k *Kept) parse(text string) error {
 	head, answers, ok := strings.Cut(text, "\nanswers\n")
 	lines := strings.Split(head, "\n")
-	if !ok || len(lines) != 7 || lines[0] != keptHead {
+	if !ok || len(lines) != 8 || lines[0] != keptHead {
 		return errNotKept
 	}
 	value := func(i int) string { _, v, _ := strings.Cut(lines[i], "\t"); return v }
 	var errs [4]error
 	k.Edition, errs[0] = model.ParseFingerprint(value(1))
-	k.LogOdds, errs[1] = model.ParseLogOdds(value(2))
-	k.PD, errs[2] = model.ParsePD(value(3))
-	k.Score, errs[3] = model.ParseNumber(value(4))
-	k.Band, k.Recommendation, k.Answers = value(5), model.Recommendation(value(6)), answers
+	k.Applicant = value(2)
+	k.LogOdds, errs[1] = model.ParseLogOdds(value(3))
+	k.PD, errs[2] = model.ParsePD(value(4))
+	k.Score, errs[3] = model.ParseNumber(value(5))
+	k.Band, k.Recommendation, k.Answers = value(6), model.Recommendation(value(7)), answers
 	if err := errors.Join(errs[:]...); err != nil {
 		return err
 	}

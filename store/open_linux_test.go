@@ -115,14 +115,14 @@ func TestNetworkDrivesAreRefused(t *testing.T) {
 func TestFullDisk(t *testing.T) {
 	dir := t.TempDir()
 	s, e := practice(t, dir, Options{})
-	must(s.KeepResult(t.Context(), nth(e, 0)))
+	must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 0)}))
 	s.branch.Close()
 
 	s = openPractice(t, dir, Options{pragmas: []string{"max_page_count(40)"}})
 	saved := 1
 	var err error
 	for err == nil && saved < 1000 {
-		if _, err = s.KeepResult(t.Context(), nth(e, saved)); err == nil {
+		if _, err = s.KeepResult(t.Context(), Complete{Answers: nth(e, saved)}); err == nil {
 			saved++
 		}
 	}
@@ -134,7 +134,7 @@ func TestFullDisk(t *testing.T) {
 	s.branch.Close()
 
 	s = openPractice(t, dir, Options{})
-	must(s.KeepResult(t.Context(), nth(e, saved)))
+	must(s.KeepResult(t.Context(), Complete{Answers: nth(e, saved)}))
 	if p := proven(t, s); p.Results != int64(saved+1) {
 		t.Fatalf("%d results of %d", p.Results, saved+1)
 	}

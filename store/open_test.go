@@ -21,7 +21,7 @@ func closedBranch(t *testing.T) (dir, file string) {
 	dir = t.TempDir()
 	s, e := practice(t, dir, Options{})
 	for n := range 20 {
-		must(s.KeepResult(t.Context(), nth(e, n)))
+		must(s.KeepResult(t.Context(), Complete{Answers: nth(e, n)}))
 	}
 	if err := s.branch.Close(); err != nil {
 		t.Fatal(err)
@@ -133,7 +133,7 @@ func TestASecondWindowIsToldSo(t *testing.T) {
 	wantCode(t, err, "locked")
 	_, err = CreatePractice(t.Context(), dir, Options{})
 	wantCode(t, err, "locked")
-	must(s.KeepResult(t.Context(), nth(e, 1))) // the first goes on
+	must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)})) // the first goes on
 	if err := s.branch.Close(); err != nil {
 		t.Fatal(err)
 	}
@@ -217,7 +217,7 @@ func TestConnectionsAreSetUp(t *testing.T) {
 func TestWhatIsKeptCannotBeChanged(t *testing.T) {
 	dir := t.TempDir()
 	s, e := practice(t, dir, Options{})
-	kept := must(s.KeepResult(t.Context(), nth(e, 1)))
+	kept := must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 	if err := s.ClearResult(t.Context(), kept.ID); err != nil {
 		t.Fatal(err)
 	}

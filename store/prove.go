@@ -240,7 +240,7 @@ func again(edition *model.Edition, k *Kept) string {
 	if !complete {
 		return ""
 	}
-	var again Kept
+	again := Kept{Applicant: k.Applicant}
 	again.figures(answers, result)
 	return again.text()
 }

@@ -78,7 +78,7 @@ func history(t *testing.T) (dir string) {
 	must(s.ReleaseEdition(t.Context(), stallCard(2, model.RepeatClients, "2026-11-01")))
 	for n := range 3 {
 		clock.forward(time.Minute)
-		must(s.KeepResult(t.Context(), nth(e, n)))
+		must(s.KeepResult(t.Context(), Complete{Answers: nth(e, n)}))
 	}
 	if err := s.ClearResult(t.Context(), 5); err != nil {
 		t.Fatal(err)
@@ -232,7 +232,7 @@ func TestADroppedTriggerIsFound(t *testing.T) {
 // A figure that the edition does not give, kept by a program gone wrong.
 func TestAFigureThatDiffersInTheLastDigitIsFound(t *testing.T) {
 	s, e := practice(t, t.TempDir(), Options{})
-	k, err := s.score(nth(e, 1))
+	k, err := s.score(Complete{Answers: nth(e, 1)})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -268,9 +268,9 @@ func TestARaisedRoleIsFoundAtSignIn(t *testing.T) {
 
 func TestProofTellsHowFarItIs(t *testing.T) {
 	s, e := practice(t, t.TempDir(), Options{})
-	var all []*model.Answers
+	var all []Complete
 	for n := range 250 {
-		all = append(all, nth(e, n))
+		all = append(all, Complete{Answers: nth(e, n)})
 	}
 	must(s.KeepResults(t.Context(), all))
 	var told []int64

@@ -15,12 +15,13 @@ func TestAResultIsKeptAsItWasSaid(t *testing.T) {
 	s, e := practice(t, dir, clock.options())
 	clock.forward(time.Minute)
 	answers := answer(e, map[string]string{"amount": "1200", "term": "10", "own_stall": "yes", "years": "1.5", "born": "1985"})
-	kept, err := s.KeepResult(t.Context(), answers)
+	kept, err := s.KeepResult(t.Context(), Complete{Applicant: " Ana\tMaría  Example\n", Answers: answers})
 	if err != nil {
 		t.Fatal(err)
 	}
 	want := Kept{
-		ID: 3, At: clock.now(), By: practicePerson, Edition: e.Fingerprint(), Answers: answers.Text(),
+		ID: 3, At: clock.now(), By: practicePerson, Edition: e.Fingerprint(),
+		Applicant: "Ana María Example", Answers: answers.Text(),
 		LogOdds: logOdds("-1.712345678"), PD: logOdds("-1.712345678").PD(), Score: kept.Score,
 		Band: "b", Recommendation: model.Refer,
 	}
@@ -41,14 +42,14 @@ func TestAResultIsKeptAsItWasSaid(t *testing.T) {
 
 func TestOnlyCompleteAnswersToAReleasedEditionAreKept(t *testing.T) {
 	s, e := practice(t, t.TempDir(), clockAt("2026-12-01 09:00").options())
-	_, err := s.KeepResult(t.Context(), answer(e, map[string]string{"amount": "1200", "term": "10", "own_stall": "yes", "born": "1985"}))
+	_, err := s.KeepResult(t.Context(), Complete{Answers: answer(e, map[string]string{"amount": "1200", "term": "10", "own_stall": "yes", "born": "1985"})})
 	wantCode(t, err, "answers_incomplete")
 
 	other, problems := model.Compile(stallCard(2, model.AllClients, "2026-01-01"))
 	if other == nil {
 		t.Fatal(problems)
 	}
-	_, err = s.KeepResults(t.Context(), []*model.Answers{nth(e, 1), nth(other, 1)})
+	_, err = s.KeepResults(t.Context(), []Complete{{Answers: nth(e, 1)}, {Answers: nth(other, 1)}})
 	wantCode(t, err, "edition_not_released")
 	if n := must(s.ResultCount(t.Context())); n != 0 {
 		t.Fatalf("%d kept of an act that was refused", n)
@@ -58,7 +59,9 @@ func TestOnlyCompleteAnswersToAReleasedEditionAreKept(t *testing.T) {
 func TestResultsComeNewestFirstPageByPage(t *testing.T) {
 	s, e := practice(t, t.TempDir(), clockAt("2026-12-01 09:00").options())
 	var all []Kept // newest first
-	keep := func(n int) { all = append([]Kept{must(s.KeepResult(t.Context(), nth(e, n)))}, all...) }
+	keep := func(n int) {
+		all = append([]Kept{must(s.KeepResult(t.Context(), Complete{Answers: nth(e, n)}))}, all...)
+	}
 	keep(0)
 	must(s.ResultCount(t.Context())) // the ids are read, and kept up from here
 	for n := 1; n < 25; n++ {
@@ -87,7 +90,7 @@ func TestResultsComeNewestFirstPageByPage(t *testing.T) {
 func TestAClearedResultStays(t *testing.T) {
 	clock := clockAt("2026-12-01 09:00")
 	s, e := practice(t, t.TempDir(), clock.options())
-	kept := must(s.KeepResult(t.Context(), nth(e, 1)))
+	kept := must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 	clock.forward(time.Hour)
 	if err := s.ClearResult(t.Context(), kept.ID); err != nil {
 		t.Fatal(err)
@@ -122,7 +125,7 @@ func TestKeepingLosesNothing(t *testing.T) {
 			}
 			a.Put(i, x)
 		}
-		kept, err := s.KeepResult(t.Context(), a)
+		kept, err := s.KeepResult(t.Context(), Complete{Answers: a})
 		if err != nil {
 			r.Fatal(err)
 		}

@@ -41,14 +41,17 @@ func TestSigningIn(t *testing.T) {
 func TestEveryActAsksDuty(t *testing.T) {
 	clock := clockAt("2026-12-01 09:00")
 	s, e := practice(t, t.TempDir(), clock.options())
-	kept := must(s.KeepResult(t.Context(), nth(e, 1)))
+	kept := must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 	acts := map[duty.Act]func(s *Session, n int) error{
 		duty.ConfirmDate: func(s *Session, _ int) error { return s.ConfirmDate(t.Context(), day("2026-12-01")) },
 		duty.ReleaseEdition: func(s *Session, n int) error {
 			_, err := s.ReleaseEdition(t.Context(), stallCard(10+n, model.AllClients, "2026-01-01"))
 			return err
 		},
-		duty.KeepResult:  func(s *Session, _ int) error { _, err := s.KeepResult(t.Context(), nth(e, 2)); return err },
+		duty.KeepResult: func(s *Session, _ int) error {
+			_, err := s.KeepResult(t.Context(), Complete{Answers: nth(e, 2)})
+			return err
+		},
 		duty.ClearResult: func(s *Session, n int) error { return s.ClearResult(t.Context(), kept.ID+int64(n)) },
 		duty.ReadEditions: func(s *Session, _ int) error {
 			_, err := s.Editions(t.Context())
@@ -72,7 +75,7 @@ func TestEveryActAsksDuty(t *testing.T) {
 				continue // before anyone is signed in
 			}
 			if n > 0 && act == duty.ClearResult {
-				must(s.KeepResult(t.Context(), nth(e, n))) // another to clear
+				must(s.KeepResult(t.Context(), Complete{Answers: nth(e, n)})) // another to clear
 				list := must(s.Results(t.Context(), 0, 1))
 				err := as.ClearResult(t.Context(), list[0].ID)
 				checkDuty(t, role, act, err)
@@ -102,7 +105,7 @@ func TestACancelledActChangesNothing(t *testing.T) {
 	s, e := practice(t, t.TempDir(), Options{})
 	ctx, cancel := context.WithCancel(t.Context())
 	cancel()
-	if _, err := s.KeepResult(ctx, nth(e, 1)); !errors.Is(err, context.Canceled) {
+	if _, err := s.KeepResult(ctx, Complete{Answers: nth(e, 1)}); !errors.Is(err, context.Canceled) {
 		t.Errorf("got %v", err)
 	}
 	if p := proven(t, s); p.Results != 0 {
@@ -117,7 +120,7 @@ func TestManyAtOnce(t *testing.T) {
 	for range 4 {
 		wait.Go(func() {
 			for n := range each {
-				if _, err := s.KeepResult(t.Context(), nth(e, n)); err != nil {
+				if _, err := s.KeepResult(t.Context(), Complete{Answers: nth(e, n)}); err != nil {
 					t.Error(err)
 				}
 			}
@@ -182,7 +185,7 @@ func TestAnswersAndFiguresAreSealed(t *testing.T) {
 	for n := range 20 {
 		a := answer(e, map[string]string{"amount": "4870", "term": "11", "own_stall": "yes", "years": "0." + strconv.Itoa(n%10), "born": "1963-07-19"})
 		a.Client = model.RepeatClients
-		k := must(s.KeepResult(t.Context(), a))
+		k := must(s.KeepResult(t.Context(), Complete{Answers: a}))
 		secrets = append(secrets, k.LogOdds.String(), k.PD.String(), k.Score.String())
 	}
 	look := func(when string) {
@@ -207,7 +210,7 @@ func TestAnswersAndFiguresAreSealed(t *testing.T) {
 func TestClosingWaitsForReaders(t *testing.T) {
 	dir := t.TempDir()
 	s, e := practice(t, dir, Options{})
-	must(s.KeepResult(t.Context(), nth(e, 1)))
+	must(s.KeepResult(t.Context(), Complete{Answers: nth(e, 1)}))
 	rows := must(s.branch.db.QueryContext(t.Context(), "SELECT seq FROM journal"))
 	if !rows.Next() {
 		t.Fatal("no rows")

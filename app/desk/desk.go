@@ -138,7 +138,7 @@ func (d *Desk) remember(name, value string) {
 // open shows a page.
 func (d *Desk) open(p page) {
 	d.page = p
-	d.shell = container.NewBorder(d.banner(), d.keyBar(), nil, nil, p.object())
+	d.shell = frame(d.banner(), d.keyBar(), nil, nil, p.object())
 	d.window.SetContent(d.shell)
 	d.window.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { d.key(e.Name) })
 	p.opened()

@@ -62,7 +62,7 @@ func (p *detailsPage) object() fyne.CanvasObject {
 			work.Add(paragraph(workedWords(r, labels, &e.Items()[i], iv.worked[i])))
 		}
 	}
-	return inset(container.NewBorder(heading(r.T("details.title")), d.caution(), nil, nil,
+	return inset(frame(heading(r.T("details.title")), d.caution(), nil, nil,
 		container.NewVScroll(container.NewVBox(form, widget.NewSeparator(), heading(r.T("details.worked")), work))))
 }
 

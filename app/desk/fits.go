@@ -31,7 +31,7 @@ func (p *fitsPage) object() fyne.CanvasObject {
 	offers := e.TermsThatFit(iv.answers)
 	head := container.NewVBox(heading(r.T("fits.title")), paragraph(r.T("fits.about")))
 	if len(offers) == 0 {
-		return inset(container.NewBorder(head, nil, nil, nil, paragraph(r.T("fits.none"))))
+		return inset(frame(head, nil, nil, nil, paragraph(r.T("fits.none"))))
 	}
 	terms := e.Scorecard().Terms
 	p.list = newListing([]listColumn{{r.T("fits.term"), 1.4}, {r.T("fits.amount"), 1.6}, {r.T("fits.payment"), 1.6}, {r.T("kept.pd"), 1}},
@@ -47,7 +47,7 @@ func (p *fitsPage) object() fyne.CanvasObject {
 	p.list.marked = true
 	p.list.keys = d.key
 	p.list.setCount(len(offers))
-	return inset(container.NewBorder(head, d.caution(), nil, nil, p.list))
+	return inset(frame(head, d.caution(), nil, nil, p.list))
 }
 
 // keysPage says what every key does.
@@ -70,5 +70,5 @@ func (p *keysPage) object() fyne.CanvasObject {
 		add(string(k.key), r.T("keys."+k.word+"_does"))
 	}
 	add("Esc", r.T("keys.escape_does"))
-	return inset(container.NewBorder(heading(r.T("keys.title")), nil, nil, nil, container.NewVScroll(form)))
+	return inset(frame(heading(r.T("keys.title")), nil, nil, nil, container.NewVScroll(form)))
 }

@@ -57,11 +57,11 @@ func (d *Desk) keep(iv *interview, then func()) {
 		return
 	}
 	iv.keptText = text
-	answers, session := iv.answers.Clone(), d.session
+	complete, session := store.Complete{Applicant: iv.who, Answers: iv.answers.Clone()}, d.session
 	d.saving.Add(1)
 	go func() {
 		defer d.saving.Done()
-		kept, err := session.KeepResult(context.Background(), answers)
+		kept, err := session.KeepResult(context.Background(), complete)
 		d.post(func() {
 			if err != nil {
 				iv.keptText, iv.saveProblem = "", d.reader.Error(err)

@@ -113,7 +113,7 @@ func (p *interviewPage) object() fyne.CanvasObject {
 		side = d.curtain()
 	}
 	p.show()
-	return container.NewBorder(p.strip.object, nil, nil, container.New(&sideWidth{}, side), p.scroll)
+	return frame(p.strip.object, nil, nil, container.New(&sideWidth{}, side), p.scroll)
 }
 
 // curtain covers what is not for whoever looks over the desk.

@@ -49,7 +49,7 @@ func (p *keptPage) object() fyne.CanvasObject {
 	p.tell(0)
 	side := container.New(&sideWidth{}, container.NewVScroll(p.about))
 	head := container.NewVBox(heading(r.T("kept.title", "n", count)), caption(r.T("kept.keys")))
-	return inset(container.NewBorder(head, d.caution(), nil, side, p.list))
+	return inset(frame(head, d.caution(), nil, side, p.list))
 }
 
 func (p *keptPage) opened() {
@@ -83,7 +83,7 @@ func (p *keptPage) cells(row int) ([]string, model.Recommendation) {
 		return []string{"", p.problem, "", "", "", ""}, ""
 	}
 	when := r.Date(model.DateOf(k.At.Local())) + " " + r.Time(k.At.Local())
-	texts := []string{when, k.By, "", "", r.Percent(k.PD), r.Score(k.Score)}
+	texts := []string{when, k.Applicant, "", "", r.Percent(k.PD), r.Score(k.Score)}
 	if e, err := p.desk.session.Edition(context.Background(), k.Edition); err == nil {
 		texts[2] = p.desk.labels(e).Product()
 		if a, problems := e.ParseAnswers(k.Answers); len(problems) == 0 {
@@ -91,7 +91,7 @@ func (p *keptPage) cells(row int) ([]string, model.Recommendation) {
 		}
 	}
 	if k.Cleared() {
-		texts[1] = r.T("kept.cleared", "who", k.By)
+		texts[1] = r.T("kept.cleared", "who", k.Applicant)
 	}
 	return texts, k.Recommendation
 }

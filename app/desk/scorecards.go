@@ -53,7 +53,7 @@ func (p *scorecardsPage) object() fyne.CanvasObject {
 	note := paragraph(p.said)
 	head := container.NewVBox(heading(r.T("scorecards.title")), note, caption(r.T("scorecards.path")),
 		p.path, p.path.line(), caption(r.T("scorecards.list")))
-	return inset(container.NewBorder(head, p.writeOut(), nil, container.New(&sideWidth{}, p.released()), p.list))
+	return inset(frame(head, p.writeOut(), nil, container.New(&sideWidth{}, p.released()), p.list))
 }
 
 // released lists the editions that are in force, or will be.
@@ -69,7 +69,7 @@ func (p *scorecardsPage) released() fyne.CanvasObject {
 			r.T("details.in_force", "title", e.Card.Title, "edition", int(e.Card.Edition), "date", e.Card.InForceFrom),
 			r.T("scorecards.code", "code", e.Fingerprint.TelephoneCode()), "")
 	}
-	return container.NewBorder(heading(r.T("scorecards.released")), nil, nil, nil, container.NewVScroll(paragraph(joinLines(lines))))
+	return frame(heading(r.T("scorecards.released")), nil, nil, nil, container.NewVScroll(paragraph(joinLines(lines))))
 }
 
 // writeOut offers the edition in force, and a blank workbook, as files.
@@ -196,7 +196,7 @@ func (p *scorecardsPage) verdict() fyne.CanvasObject {
 		head.Add(paragraph(p.said))
 	}
 	head.Add(buttons)
-	return inset(container.NewBorder(head, full, nil, nil, p.list))
+	return inset(frame(head, full, nil, nil, p.list))
 }
 
 func (p *scorecardsPage) opened() {

@@ -4,6 +4,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/theme"
 	"fyne.io/fyne/v2/widget"
 )
@@ -58,4 +59,16 @@ func heading(text string) *canvas.Text {
 // inset gives an object room on every side.
 func inset(o fyne.CanvasObject) fyne.CanvasObject {
 	return container.NewPadded(container.NewPadded(o))
+}
+
+// frame puts parts around a middle, as container.NewBorder does, but in the
+// order that Tab goes: from the top down. Any part but the middle may be nil.
+func frame(top, bottom, left, right, middle fyne.CanvasObject) *fyne.Container {
+	c := container.New(layout.NewBorderLayout(top, bottom, left, right))
+	for _, o := range []fyne.CanvasObject{top, left, middle, right, bottom} {
+		if o != nil {
+			c.Objects = append(c.Objects, o)
+		}
+	}
+	return c
 }

@@ -38,7 +38,7 @@ func (p *whyPage) object() fyne.CanvasObject {
 	}
 	reasons := paragraph(joinLines(reasonWords(d.reader, labels, iv)))
 	head := container.NewVBox(heading(d.reader.T("why.title")), caption(d.reader.T("why.keys")))
-	return inset(container.NewBorder(head, d.caution(), nil, nil, container.NewVScroll(container.NewVBox(picture,
+	return inset(frame(head, d.caution(), nil, nil, container.NewVScroll(container.NewVBox(picture,
 		widget.NewSeparator(), heading(d.reader.T("why.reasons")), reasons))))
 }
 

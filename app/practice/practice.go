@@ -109,13 +109,13 @@ func furnish(ctx context.Context, s *store.Session, c *calendar) error {
 	}
 	// All at once is all or none, and one wait for the disk. The store asks for
 	// the time of each entry, so each result is kept on its day.
-	var answers []*model.Answers
+	var all []store.Complete
 	c.past = nil
 	for _, a := range applications {
-		answers = append(answers, a.Answers)
+		all = append(all, store.Complete{Applicant: a.Name, Answers: a.Answers})
 		c.past = append(c.past, morning(a.Answers.On))
 	}
-	_, err = s.KeepResults(ctx, answers)
+	_, err = s.KeepResults(ctx, all)
 	return err
 }
 
