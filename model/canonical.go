@@ -45,15 +45,16 @@ func (f Fingerprint) TelephoneCode() string {
 
 // Canonical is the one text of s: its sheets in order, each a line with its
 // name, a line of columns, then a line a row; cells are parted by tabs, and a
-// tab, a line end or a backslash in a cell is escaped. Empty sheets and the
-// blank items of Card and Terms are left out. Text is NFC.
+// tab, a line end or a backslash in a cell is escaped. Optional sheets without
+// rows and the blank items of Card and Terms are left out. Text is NFC.
 func (s Scorecard) Canonical() string { return canonicalText(s.Sheets()) }
 
 func canonicalText(sheets []Sheet) string {
 	var b strings.Builder
 	b.WriteString(canonicalHead + "\n")
-	for _, sheet := range sheets {
-		if len(sheet.Rows) == 0 {
+	forms := Forms()
+	for i, sheet := range sheets {
+		if len(sheet.Rows) == 0 && forms[i].Optional {
 			continue
 		}
 		b.WriteString(sheet.Name + "\n")

@@ -257,7 +257,7 @@ func (item *Item) weightRange(x *possible) (lo, hi LogOdds) {
 	}
 	switch {
 	case !x.states.has(Given):
-	case item.slope.Digits != 0:
+	case item.slope.Digits != 0 || x.attrs == 0:
 		l, h := item.numberRange(x.lo, x.hi)
 		lo, hi = min(lo, l), max(hi, h)
 	default:
