@@ -16,6 +16,14 @@ func (r *Reader) Name(entry any) string {
 	return r.T(list + "." + fmt.Sprint(entry))
 }
 
+// word is the entry of a list in the messages, or itself where there is none.
+func (r *Reader) word(list, entry string) string {
+	if key := list + "." + entry; r.has(key) {
+		return r.T(key)
+	}
+	return entry
+}
+
 func listOf(entry any) string {
 	switch entry.(type) {
 	case model.Recommendation:
@@ -40,6 +48,8 @@ func listOf(entry any) string {
 		return "rate_per"
 	case model.InterestMethod:
 		return "interest"
+	case model.TermUnit:
+		return "term_unit"
 	case NumberStyle:
 		return "number_style"
 	case DateOrder:

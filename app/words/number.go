@@ -149,3 +149,19 @@ func (r *Reader) canonical(text string) string {
 	}
 	return r.marks.write(text)
 }
+
+// limits writes a range of canonical numbers; an end that no number lies
+// beyond is open.
+func (r *Reader) limits(least, most string) string {
+	low, high := least != "" && least != (-model.Largest).String(), most != "" && most != model.Largest.String()
+	key := "limits.none"
+	switch {
+	case low && high:
+		key = "limits.both"
+	case low:
+		key = "limits.least"
+	case high:
+		key = "limits.most"
+	}
+	return r.T(key, "least", r.canonical(least), "most", r.canonical(most))
+}

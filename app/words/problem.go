@@ -8,8 +8,12 @@ import (
 	"weighhouse/model"
 )
 
-// longestShown is how much of a text from outside a sentence repeats.
-const longestShown = 60
+// How much of a text from outside a sentence repeats: of a value that was
+// typed, and of anything else, such as a file's path.
+const (
+	mostOfValue = 60
+	mostOfOther = 400
+)
 
 // Problem words what is wrong and where: "Attributes!D7 (From): ...".
 func (r *Reader) Problem(p model.Problem) string {
@@ -28,7 +32,11 @@ func (r *Reader) Sentence(p model.Problem) string {
 	}
 	args := make([]any, 0, 2*len(p.Args))
 	for name, value := range p.Args {
-		args = append(args, name, shorten(value))
+		most := mostOfOther
+		if name == "value" {
+			most = mostOfValue
+		}
+		args = append(args, name, shorten(value, most))
 	}
 	return r.T(key, args...)
 }
@@ -38,7 +46,7 @@ func (r *Reader) Error(err error) string {
 	if p, ok := errors.AsType[model.Problem](err); ok {
 		return r.Problem(p)
 	}
-	return r.T("problem_outside", "text", shorten(err.Error()))
+	return r.T("problem_outside", "text", shorten(err.Error(), mostOfOther))
 }
 
 // Where words a place: a cell, a row or a sheet of a workbook, or a question.
@@ -63,13 +71,13 @@ func (r *Reader) Where(p model.Place) string {
 	return where
 }
 
-// shorten makes text from outside safe to show: at most 60 characters, and
-// none that move or hide their neighbours.
-func shorten(text string) string {
+// shorten makes text from outside safe to show: at most so many characters,
+// and none that move or hide their neighbours.
+func shorten(text string, most int) string {
 	var b strings.Builder
 	n := 0
 	for _, c := range text {
-		if n++; n > longestShown {
+		if n++; n > most {
 			b.WriteString("…")
 			break
 		}

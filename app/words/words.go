@@ -13,6 +13,7 @@ import (
 	"io/fs"
 	"slices"
 	"strings"
+	"sync"
 	texttemplate "text/template"
 
 	"github.com/BurntSushi/toml"
@@ -89,17 +90,38 @@ func New(style Style) *Reader {
 		style.Dates = DayFirst
 	}
 	r := &Reader{style: style, marks: marksOf[style.Numbers]}
-	r.parser = &parser{texttemplate.FuncMap{"num": r.canonical, "date": r.canonicalDate}, unbreakable[style.Language]}
-	bundle := i18n.NewBundle(language.Make(style.Language))
-	bundle.RegisterUnmarshalFunc("toml", toml.Unmarshal)
-	files, _ := fs.Glob(assets.Words, "words/*."+style.Language+".toml")
-	for _, f := range files {
-		if _, err := bundle.LoadMessageFileFS(assets.Words, f); err != nil {
-			panic(fmt.Sprintf("%s: %v", f, err)) // built in, and held by a test
-		}
-	}
+	r.parser = &parser{texttemplate.FuncMap{"num": r.canonical, "date": r.canonicalDate, "limits": r.limits, "word": r.word}, unbreakable[style.Language]}
+	tag := language.Make(style.Language)
+	bundle := i18n.NewBundle(tag)
+	bundle.MustAddMessages(tag, sentences[style.Language]()...)
 	r.localizer = i18n.NewLocalizer(bundle, style.Language)
 	return r
+}
+
+// sentences reads a language's message files, once.
+var sentences = map[string]func() []*i18n.Message{}
+
+func init() {
+	for _, l := range Languages() {
+		sentences[l.Code] = sync.OnceValue(func() []*i18n.Message { return load(l.Code) })
+	}
+}
+
+// load reads the files, which are built in and held by a test.
+func load(language string) (all []*i18n.Message) {
+	names, _ := fs.Glob(assets.Words, "words/*."+language+".toml")
+	for _, name := range names {
+		text, err := fs.ReadFile(assets.Words, name)
+		if err != nil {
+			panic(err)
+		}
+		f, err := i18n.ParseMessageFileBytes(text, name, map[string]i18n.UnmarshalFunc{"toml": toml.Unmarshal})
+		if err != nil {
+			panic(fmt.Sprintf("%s: %v", name, err))
+		}
+		all = append(all, f.Messages...)
+	}
+	return all
 }
 
 // Style is the one that the Reader was made for.
@@ -163,9 +185,10 @@ func count(v any) any {
 	return v
 }
 
-// A parser lets messages write {{num .x}} and {{date .x}} for blanks that
-// come as canonical text. It is made for one Reader, whose own bundle keeps
-// what it parsed.
+// A parser lets messages write blanks that come as canonical text: {{num .x}}
+// and {{date .x}}, {{limits .least .most}} for a range that may be open, and
+// {{word "list" .x}} for an entry of a list in the messages. It is made for
+// one Reader, whose own bundle keeps what it parsed.
 type parser struct {
 	funcs       texttemplate.FuncMap
 	unbreakable *strings.Replacer // nil for none
