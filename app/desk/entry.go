@@ -19,7 +19,8 @@ import (
 type entry struct {
 	widget.Entry
 	keys keys
-	most int // characters
+	most int  // characters
+	lit  bool // has the focus
 	// letter may take a typed character for itself.
 	letter func(rune) bool
 	enter  func()
@@ -41,6 +42,7 @@ func newEntry(keys keys, most int) *entry {
 var lastEntry *entry
 
 func (e *entry) FocusGained() {
+	e.lit = true
 	e.Entry.FocusGained()
 	if lastEntry != e && !e.MultiLine {
 		e.Entry.TypedShortcut(&fyne.ShortcutSelectAll{})
@@ -52,6 +54,7 @@ func (e *entry) FocusGained() {
 }
 
 func (e *entry) FocusLost() {
+	e.lit = false
 	e.Entry.FocusLost()
 	if e.moved != nil {
 		e.moved(false)
@@ -141,7 +144,7 @@ func (r *entryRenderer) paint() {
 	border.StrokeWidth = 1
 	if r.e.Disabled() {
 		ground.FillColor, border.StrokeColor = shade(theme.ColorNameDisabledButton), shade(theme.ColorNameSeparator)
-	} else if canvasOf(r.e) != nil && canvasOf(r.e).Focused() == fyne.Focusable(r.e) {
+	} else if r.e.lit {
 		border.StrokeWidth = 2
 	}
 }

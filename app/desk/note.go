@@ -64,13 +64,16 @@ func (r *noteRenderer) MinSize() fyne.Size {
 }
 
 func (r *noteRenderer) Layout(size fyne.Size) {
-	height := lineHeight(theme.CaptionTextSize())
-	for i, line := range wrap(r.note.text, size.Width, theme.CaptionTextSize(), fyne.TextStyle{}, r.note.lines) {
+	height, textSize := lineHeight(theme.CaptionTextSize()), theme.CaptionTextSize()
+	if fyne.MeasureText(r.note.text, textSize, fyne.TextStyle{}).Width > size.Width*float32(r.note.lines) {
+		textSize = smallLabel
+	}
+	for i, line := range wrap(r.note.text, size.Width, textSize, fyne.TextStyle{}, r.note.lines) {
 		t := r.texts[i]
 		t.Move(fyne.NewPos(0, height*float32(i)))
 		t.Resize(fyne.NewSize(size.Width, height))
-		if colour := shade(r.note.colour); t.Text != line || t.Color != colour {
-			t.Text, t.Color = line, colour
+		if colour := shade(r.note.colour); t.Text != line || t.Color != colour || t.TextSize != textSize {
+			t.Text, t.Color, t.TextSize = line, colour, textSize
 			t.Refresh()
 		}
 	}

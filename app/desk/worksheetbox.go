@@ -174,7 +174,11 @@ func (b *worksheetBox) look(typing *worksheetRow) {
 	case err != nil:
 		sum = model.Maybe[model.Number]{}
 		if bad != typing || !b.reader.Unfinished(bad.entry.Text, b.kind.decimals) {
-			b.note.refuse(bad.line.label + ": " + b.reader.Sentence(err.(model.Problem)))
+			sentence := b.reader.Sentence(err.(model.Problem))
+			if bad != typing {
+				sentence = bad.line.label + ": " + sentence
+			}
+			b.note.refuse(sentence)
 		}
 	case b.stated:
 		b.now = model.Answer{State: model.StatedUnknown}

@@ -71,7 +71,7 @@ func (r *Reader) ParseNumber(text string, decimals int) (model.Number, error) {
 		}
 		n, err := model.ParseNumber(sign + canonical)
 		if err != nil {
-			return refuse("number_too_large", "most", model.Largest.Round(0).String())
+			return refuse("number_too_large")
 		}
 		return n, nil
 	}
