@@ -6,6 +6,7 @@ import (
 	"context"
 	"os"
 	"path/filepath"
+	"strconv"
 	"sync"
 
 	"fyne.io/fyne/v2"
@@ -60,7 +61,7 @@ func Run(a fyne.App, o Options, shown func()) error {
 	d := &Desk{app: a, post: fyne.Do}
 	a.Settings().SetTheme(look{})
 	d.window = a.NewWindow("Weighhouse")
-	d.window.Resize(fyne.NewSize(1280, 700))
+	d.window.Resize(smallest)
 	d.window.CenterOnScreen()
 	d.window.SetContent(container.NewWithoutLayout())
 	var failed error
@@ -109,6 +110,9 @@ func (d *Desk) begin(session *store.Session, o Options) {
 	d.dark = d.remembered("light") == "dark"
 	d.app.Settings().SetTheme(look{d.dark})
 	d.window.SetCloseIntercept(d.close)
+	if w, h := d.remembered("width"), d.remembered("height"); w != "" && h != "" {
+		d.window.Resize(fyne.NewSize(length(w, smallest.Width), length(h, smallest.Height)))
+	}
 	d.show("interview")
 }
 
@@ -169,9 +173,21 @@ func (d *Desk) caution() fyne.CanvasObject {
 // today is the date that the branch goes by, and whether it is doubtful.
 func (d *Desk) today() (model.Date, error) { return d.session.Branch().Today() }
 
+// smallest is what the window begins with: it fits the smallest screen.
+var smallest = fyne.NewSize(1000, 640)
+
+// length reads a remembered length of the window.
+func length(text string, least float32) float32 {
+	n, _ := strconv.Atoi(text)
+	return max(float32(n), least)
+}
+
 // close keeps what is complete before the window goes.
 func (d *Desk) close() {
 	d.leave()
+	size, branch := d.window.Canvas().Size(), d.session.Branch()
+	branch.Remember(context.Background(), "width", strconv.Itoa(int(size.Width)))
+	branch.Remember(context.Background(), "height", strconv.Itoa(int(size.Height)))
 	d.saving.Wait()
 	d.window.Close()
 }

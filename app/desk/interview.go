@@ -2,7 +2,6 @@ package desk
 
 import (
 	"slices"
-	"strings"
 	"time"
 
 	"weighhouse/model"
@@ -154,10 +153,4 @@ func (iv *interview) next(after int) int {
 		}
 	}
 	return -1
-}
-
-// begun tells that there is something to lose.
-func (iv *interview) begun() bool {
-	answered, _ := iv.asked()
-	return answered > 0 || strings.TrimSpace(iv.who) != ""
 }

@@ -24,6 +24,7 @@ type scorecardsPage struct {
 	folder string
 
 	reading *workbook.Reading // nil while looking for a file
+	start   fyne.Focusable    // where the work starts
 	file    string
 	said    string // the outcome of the last act, under the title
 }
@@ -50,6 +51,7 @@ func (p *scorecardsPage) object() fyne.CanvasObject {
 	p.list.keys = d.key
 	p.list.onTake = func(row int) { p.take(p.places[row].path) }
 	p.fill()
+	p.start = p.list
 	note := paragraph(p.said)
 	head := container.NewVBox(heading(r.T("scorecards.title")), note, caption(r.T("scorecards.path")),
 		p.path, p.path.line(), caption(r.T("scorecards.list")))
@@ -173,11 +175,14 @@ func (p *scorecardsPage) verdict() fyne.CanvasObject {
 	if len(problems) > 0 {
 		setParagraph(full, r.Problem(problems[0]))
 	}
+	p.start = p.list
 	title, accepted := r.T("scorecards.refused", "n", len(problems)), p.reading.Edition != nil
 	buttons := container.NewHBox()
 	if accepted {
 		title = r.T("scorecards.sound")
-		buttons.Add(newPush(r.T("scorecards.accept"), d.key, p.accept))
+		accept := newPush(r.T("scorecards.accept"), d.key, p.accept)
+		buttons.Add(accept)
+		p.start = accept
 	}
 	if len(problems) > 0 {
 		buttons.Add(newPush(r.T("scorecards.save_list"), d.key, p.saveList))
@@ -206,7 +211,7 @@ func (p *scorecardsPage) opened() {
 			p.read(files[0].Path())
 		}
 	})
-	d.window.Canvas().Focus(p.list)
+	d.window.Canvas().Focus(p.start)
 }
 
 func (p *scorecardsPage) key(name fyne.KeyName) bool {

@@ -17,8 +17,6 @@ type whyPage struct {
 	asText  bool
 }
 
-func newWhyPage(d *Desk) *whyPage { return &whyPage{desk: d} }
-
 func (p *whyPage) object() fyne.CanvasObject {
 	d, iv := p.desk, p.desk.interview
 	if iv == nil || !iv.shows() || d.hidden {

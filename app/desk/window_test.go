@@ -73,7 +73,8 @@ func start(t *testing.T, c *exec.Cmd) {
 
 func (s *screen) command(name string, arguments ...string) *exec.Cmd {
 	c := exec.Command(name, arguments...)
-	c.Env = append(os.Environ(), "DISPLAY="+s.display, "LIBGL_ALWAYS_SOFTWARE=1")
+	home := s.t.TempDir()
+	c.Env = append(os.Environ(), "DISPLAY="+s.display, "LIBGL_ALWAYS_SOFTWARE=1", "LANG=en_GB.UTF-8", "HOME="+home, "XDG_CONFIG_HOME="+home)
 	return c
 }
 
