@@ -47,14 +47,20 @@ type Answers struct {
 	// Client tells a new client from a repeat one.
 	Client  ClientKind
 	edition *Edition
-	given   []Answer // by Item.Index
-	values  []value  // what each of given comes to
+	// By Item.Index: what was given; what that comes to by itself; and what each
+	// item comes to, worked out on the day worked.
+	given    []Answer
+	own      []value
+	values   []value
+	worked   Date
+	complete bool // nothing is missing
 }
 
 // NewAnswers are answers with nothing entered yet.
 func (e *Edition) NewAnswers(on Date, client ClientKind) *Answers {
-	return &Answers{On: on, Client: client, edition: e,
-		given: make([]Answer, len(e.items)), values: make([]value, len(e.items))}
+	n := len(e.items)
+	values := make([]value, 2*n)
+	return &Answers{On: on, Client: client, edition: e, given: make([]Answer, n), own: values[:n:n], values: values[n:]}
 }
 
 // Edition is the edition that asks.
@@ -67,6 +73,11 @@ func (a *Answers) At(index int) Answer { return a.given[index] }
 // item, as all that ParseAnswer gives does; whether it is acceptable is told
 // by Edition.CheckAnswer. A worksheet without any line is not answered.
 func (a *Answers) Put(index int, answer Answer) {
+	a.enter(index, answer)
+	a.work()
+}
+
+func (a *Answers) enter(index int, answer Answer) {
 	switch {
 	case answer.State != Given:
 		answer = Answer{State: answer.State}
@@ -74,7 +85,7 @@ func (a *Answers) Put(index int, answer Answer) {
 		answer = Answer{}
 	}
 	a.given[index] = answer
-	a.values[index] = a.edition.items[index].valueOf(&answer)
+	a.own[index] = a.edition.items[index].valueOf(&answer)
 }
 
 // Applies tells whether a question is asked of this applicant: a conditional
@@ -84,7 +95,7 @@ func (a *Answers) Applies(index int) Truth {
 	if c == nil {
 		return Sure
 	}
-	source := &a.values[c.index]
+	source := &a.own[c.index]
 	switch earlier := a.Applies(c.index); {
 	case earlier == Not:
 		return Not
@@ -99,7 +110,7 @@ func (a *Answers) Applies(index int) Truth {
 // Clone is a copy that shares nothing that may be changed.
 func (a *Answers) Clone() *Answers {
 	b := *a
-	b.given, b.values = slices.Clone(a.given), slices.Clone(a.values)
+	b.given, b.own, b.values = slices.Clone(a.given), slices.Clone(a.own), slices.Clone(a.values)
 	return &b
 }
 
@@ -168,6 +179,7 @@ func (e *Edition) ParseAnswers(text string) (*Answers, []Problem) {
 	if a.Client = ClientKind(client); a.Client != NewClients && a.Client != RepeatClients {
 		bad("client", Problem{Code: "not_in_list", Args: Args{"value": client, "options": "new, repeat"}})
 	}
+	a.work()
 	return a, problems
 }
 
@@ -183,7 +195,7 @@ func (a *Answers) read(code, text string, seen bool) error {
 	answer, err := a.edition.ParseAnswer(i, text)
 	answer.Seen = seen
 	if err == nil {
-		a.Put(i, answer)
+		a.enter(i, answer)
 	}
 	return err
 }

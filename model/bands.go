@@ -44,6 +44,7 @@ func (c *compiler) bands() {
 			bad("Manager limit", "limits_crossed", Args{"value": m.Value.String(), "expected": o.Value.String()})
 		}
 		c.e.bands = append(c.e.bands, from)
+		c.e.strictness = append(c.e.strictness, b.Recommendation.strictness())
 		next = below
 	}
 }

@@ -34,22 +34,24 @@ func (e *Edition) Bound(a *Answers) Bounds {
 	b.Lowest, b.Highest = e.sumRange(&p)
 	b.LowestPD, b.HighestPD = b.Lowest.PD(), b.Highest.PD()
 	b.FirstBand, b.LastBand = e.band(b.LowestPD), e.band(b.HighestPD)
-	b.Mildest = e.card.Bands[b.FirstBand].Recommendation
-	b.Strictest = e.card.Bands[b.LastBand].Recommendation
+	mildest, strictest := e.strictness[b.FirstBand], e.strictness[b.LastBand]
 	for i := range e.rules {
 		rule := &e.rules[i]
-		switch rule.may(&p) {
-		case Sure:
+		fires := rule.may(&p)
+		if fires == Sure {
 			b.Fires |= 1 << i
-			b.Mildest = stricter(b.Mildest, rule.Effect.recommends())
-			b.Strictest = stricter(b.Strictest, rule.Effect.recommends())
-		case Perhaps:
+			mildest = max(mildest, rule.strictness)
+		}
+		if fires == Perhaps {
 			b.May |= 1 << i
-			b.Strictest = stricter(b.Strictest, rule.Effect.recommends())
+		}
+		if fires != Not {
+			strictest = max(strictest, rule.strictness)
 		}
 	}
+	b.Mildest, b.Strictest = byStrictness[mildest], byStrictness[strictest]
 	for _, i := range e.asked {
-		if s := a.values[i].state; p.of[i].states != set(IsNotApplicable) && (s == Missing || s == IsNotApplicable) {
+		if s := a.own[i].state; p.of[i].states != set(IsNotApplicable) && (s == Missing || s == IsNotApplicable) {
 			b.Missing = append(b.Missing, i)
 		}
 	}
@@ -77,12 +79,12 @@ func (e *Edition) narrows(a *Answers, now Bounds, p *possibles) int {
 	for _, i := range now.Missing {
 		widest := LogOdds(0)
 		e.trials(&e.items[i], func(x value, d Date) {
-			try.values[i], try.given[i].Date = x, d
+			try.own[i], try.given[i].Date = x, d
 			e.spread(try, p)
 			lowest, highest := e.sumRange(p)
 			widest = max(widest, highest-lowest)
 		})
-		try.values[i] = a.values[i]
+		try.own[i] = a.own[i]
 		if cut := now.Highest - now.Lowest - widest; cut > bestCut {
 			best, bestCut = i, cut
 		}
@@ -93,21 +95,21 @@ func (e *Edition) narrows(a *Answers, now Bounds, p *possibles) int {
 // trials gives the answers to try for a missing question.
 func (e *Edition) trials(item *Item, try func(x value, d Date)) {
 	if item.UnknownAllowed {
-		try(value{state: StatedUnknown, attr: int8(item.unknown)}, Date{})
+		try(item.in(StatedUnknown), Date{})
 	}
 	switch item.Kind {
 	case Choice, YesNo:
 		for i, a := range item.Attributes {
 			if !reserved(a.Code) {
-				try(value{state: Given, attr: int8(i)}, Date{})
+				try(item.picked(i, true), Date{})
 			}
 		}
 	case DateKind:
 		for _, year := range [...]int{1940, 1960, 1980, 2000} {
-			try(value{state: Given, n: Whole(int64(year)), attr: -1}, Date{Year: year})
+			try(item.counted(Whole(int64(year)), true), Date{Year: year})
 		}
 	default:
-		number := func(n Number) { try(value{state: Given, n: n, attr: int8(item.bandOf(n))}, Date{}) }
+		number := func(n Number) { try(item.counted(n, true), Date{}) }
 		lo, hi := item.LowestAccepted.Or(0), item.HighestAccepted.Or(Whole(1_000_000))
 		switch t := &e.card.Terms; item.Code {
 		case Amount:

@@ -111,8 +111,7 @@ func newUsage(e *Edition) *usage {
 
 func (u *usage) note(a *Answers, r Result) {
 	e := a.edition
-	var v values
-	e.evaluate(a, &v)
+	v, _ := a.whole()
 	for i := range e.items {
 		if v[i].attr >= 0 {
 			u.attributes[i] |= 1 << v[i].attr

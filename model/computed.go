@@ -120,8 +120,10 @@ func (c *compiler) sort(formula map[string]int) {
 
 // compute works out a computed item from its parts' values. An unknown part
 // makes it unknown; then one with nothing left, then one that is not
-// applicable, does alike, but in a sum what is not applicable counts nothing.
-func (e *Edition) compute(item *Item, a *Answers, v *values) value {
+// applicable, does alike, but in a sum what is not applicable counts nothing. A
+// missing part makes it missing.
+func (e *Edition) compute(item *Item, a *Answers) value {
+	v := a.values
 	var states stateSet
 	told := false
 	for _, p := range item.parts {
@@ -132,9 +134,12 @@ func (e *Edition) compute(item *Item, a *Answers, v *values) value {
 	if item.Operation == Sum {
 		states &^= set(IsNotApplicable)
 	}
+	if states.has(Missing) {
+		return item.in(Missing)
+	}
 	for _, s := range outranking {
 		if states.has(s) {
-			return value{state: s, attr: int8(item.stateAttribute(s))}
+			return item.in(s)
 		}
 	}
 	var n Number
@@ -158,7 +163,7 @@ func (e *Edition) compute(item *Item, a *Answers, v *values) value {
 	case Ratio:
 		divisor := v[item.parts[1].index].n
 		if divisor <= 0 {
-			return value{state: IsNothingLeft, attr: int8(item.nothingLeft)}
+			return item.in(IsNothingLeft)
 		}
 		n = v[item.parts[0].index].n.Over(divisor, int(item.Decimals))
 	case Instalment:
@@ -168,7 +173,7 @@ func (e *Edition) compute(item *Item, a *Answers, v *values) value {
 	case AgeAtLastPayment:
 		n = years(e.LastPayment(a.On, v[item.parts[1].index].n), a.given[item.parts[0].index].Date)
 	}
-	return value{n: n, attr: int8(item.bandOf(n)), state: Given, told: told}
+	return item.counted(n, told)
 }
 
 // outranking are the states of a part that a computed item takes over, the

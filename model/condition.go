@@ -68,7 +68,7 @@ func readCondition(text string) (code string, attributes []string, not, ok bool)
 	return "", nil, false, false
 }
 
-func (c *condition) holds(v *values) bool {
+func (c *condition) holds(v []value) bool {
 	x := &v[c.index]
 	return x.state == Given && c.among>>uint8(x.attr)&1 != 0
 }

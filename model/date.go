@@ -14,24 +14,14 @@ type Date struct {
 
 // ParseDate reads "2026-03-01" or a year alone, "1985", from 1800 to 2999.
 func ParseDate(text string) (Date, error) {
-	bad := Problem{Code: "not_a_date", Args: Args{"value": text}}
-	d := Date{}
-	switch len(text) {
-	case 4:
-		if _, err := fmt.Sscanf(text, "%4d", &d.Year); err != nil || fmt.Sprintf("%04d", d.Year) != text {
-			return Date{}, bad
-		}
-	case 10:
-		t, err := time.Parse(time.DateOnly, text)
-		if err != nil {
-			return Date{}, bad
-		}
+	var d Date
+	if t, err := time.Parse(time.DateOnly, text); err == nil {
 		d = DateOf(t)
-	default:
-		return Date{}, bad
+	} else if t, err := time.Parse("2006", text); err == nil {
+		d = Date{Year: t.Year()}
 	}
 	if d.Year < 1800 || d.Year > 2999 {
-		return Date{}, bad
+		return Date{}, Problem{Code: "not_a_date", Args: Args{"value": text}}
 	}
 	return d, nil
 }

@@ -23,7 +23,8 @@ type Edition struct {
 	order       []int // of what is computed, each after its parts
 	scored      []int
 	rules       []rule
-	bands       []PD // where each band starts
+	bands       []PD  // where each band starts
+	strictness  []int // of what each band recommends
 	plan        *loan.Plan
 	base        int // place of the base among the covariance's names
 	// score = offset - factor × log-odds

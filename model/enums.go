@@ -181,6 +181,8 @@ const (
 // Options lists the recommendations.
 func (Recommendation) Options() []string { return []string{"approve", "refer", "decline"} }
 
+var byStrictness = [...]Recommendation{Approve, Refer, Decline}
+
 func (r Recommendation) strictness() int {
 	switch r {
 	case Refer:
@@ -189,14 +191,6 @@ func (r Recommendation) strictness() int {
 		return 2
 	}
 	return 0
-}
-
-// stricter is the stricter of two recommendations.
-func stricter(a, b Recommendation) Recommendation {
-	if b.strictness() > a.strictness() {
-		return b
-	}
-	return a
 }
 
 // Test is what a rule asks of an answer.

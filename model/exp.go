@@ -32,7 +32,7 @@ func exp(x float64) float64 {
 	case x < -708:
 		return 0
 	}
-	k := math.Floor(float64(x*(1/math.Ln2)) + 0.5)
+	k := float64(int64(float64(x*(1/math.Ln2)) + math.Copysign(0.5, x)))
 	hi, lo := x-float64(k*ln2Hi), float64(k*ln2Lo)
 	r := hi - lo
 	z := float64(r * r)

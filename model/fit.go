@@ -24,7 +24,7 @@ func (e *Edition) TermsThatFit(a *Answers) []Offer {
 	try := a.Clone()
 	amount, term := &e.items[e.byCode[Amount]], &e.items[e.byCode[Term]]
 	put := func(item *Item, n Number) {
-		try.values[item.Index].n, try.values[item.Index].attr = n, int8(item.bandOf(n))
+		try.own[item.Index] = item.counted(n, try.own[item.Index].told)
 	}
 	top := min(asked, t.LargestAmount)
 	step := t.SmallestAmount + (top-t.SmallestAmount)/t.AmountStep*t.AmountStep // the first at top or below
@@ -36,6 +36,7 @@ func (e *Edition) TermsThatFit(a *Answers) []Offer {
 				next -= t.AmountStep
 			}
 			put(amount, x)
+			try.work()
 			r, ok := e.Score(try)
 			if !ok {
 				return nil

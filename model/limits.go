@@ -16,7 +16,7 @@ func (e *Edition) Check(a *Answers) []Problem {
 
 // CheckAnswer does for one answer what Check does for all.
 func (e *Edition) CheckAnswer(a *Answers, index int) []Problem {
-	item, x := &e.items[index], a.values[index]
+	item, x := &e.items[index], a.own[index]
 	if x.state != Given || item.isChoice() {
 		return nil
 	}

@@ -52,16 +52,15 @@ type Slope struct {
 // ParseSlope reads canonical decimal text of at most 12 significant digits
 // and 15 places.
 func ParseSlope(text string) (Slope, error) {
-	bad := Problem{Code: "not_a_number", Args: Args{"value": text}}
 	whole, fraction, _ := strings.Cut(strings.TrimPrefix(text, "-"), ".")
 	if whole == "" || strings.HasSuffix(text, ".") {
-		return Slope{}, bad
+		return Slope{}, notANumber(text)
 	}
 	fraction = strings.TrimRight(fraction, "0")
 	digits := strings.TrimLeft(whole+fraction, "0")
 	for _, c := range digits {
 		if c < '0' || c > '9' {
-			return Slope{}, bad
+			return Slope{}, notANumber(text)
 		}
 	}
 	if len(fraction) > 15 {

@@ -4,6 +4,7 @@ import (
 	"math"
 	"math/bits"
 	"slices"
+	"strconv"
 	"strings"
 )
 
@@ -165,47 +166,43 @@ func abs(n int64) uint64 {
 var pow10 = [...]int64{1, 10, 100, 1_000, 10_000, 100_000, 1_000_000, 10_000_000, 100_000_000, 1_000_000_000,
 	10_000_000_000, 100_000_000_000, 1_000_000_000_000}
 
+func notANumber(text string) error {
+	return Problem{Code: "not_a_number", Args: Args{"value": text}}
+}
+
 // parseFixed reads canonical decimal text into units of 10^-places.
 func parseFixed(text string, places int) (int64, error) {
-	bad := Problem{Code: "not_a_number", Args: Args{"value": text}}
-	digits := strings.TrimPrefix(text, "-")
+	digits, negative := strings.CutPrefix(text, "-")
 	whole, fraction, point := strings.Cut(digits, ".")
 	if whole == "" || (point && fraction == "") {
-		return 0, bad
+		return 0, notANumber(text)
 	}
 	fraction = strings.TrimRight(fraction, "0")
 	var n int64
 	overflow := false
-	add := func(part string) bool {
+	add := func(digit int64) {
+		if overflow = overflow || n > (math.MaxInt64-9)/10; !overflow {
+			n = n*10 + digit
+		}
+	}
+	for _, part := range [...]string{whole, fraction} {
 		for _, c := range []byte(part) {
 			if c < '0' || c > '9' {
-				return false
+				return 0, notANumber(text)
 			}
-			if n > (math.MaxInt64-9)/10 {
-				overflow = true
-				continue
-			}
-			n = n*10 + int64(c-'0')
+			add(int64(c - '0'))
 		}
-		return true
-	}
-	if !add(whole) || !add(fraction) {
-		return 0, bad
 	}
 	if len(fraction) > places {
-		return 0, Problem{Code: "too_many_decimals", Args: Args{"value": text, "most": formatFixed(int64(places), 0)}}
+		return 0, Problem{Code: "too_many_decimals", Args: Args{"value": text, "most": strconv.Itoa(places)}}
 	}
 	for range places - len(fraction) {
-		if n > math.MaxInt64/10 {
-			overflow = true
-			break
-		}
-		n *= 10
+		add(0)
 	}
 	if overflow {
 		return 0, Problem{Code: "number_too_large", Args: Args{"value": text}}
 	}
-	if strings.HasPrefix(text, "-") {
+	if negative {
 		n = -n
 	}
 	return n, nil

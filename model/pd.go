@@ -44,7 +44,7 @@ func (p PD) Float() float64 { return float64(p) / 1e9 }
 func (l LogOdds) PD() PD { return pdOf(l.Float()) }
 
 // pdOf is the PD of log-odds that are not exact.
-func pdOf(x float64) PD { return PD(math.Floor(float64(logistic(x)*1e9) + 0.5)) }
+func pdOf(x float64) PD { return PD(float64(logistic(x)*1e9) + 0.5) }
 
 // LogOdds is the log-odds of p, for placing PDs on an axis; the ends 0 and 1
 // give minus and plus infinity.

@@ -112,7 +112,7 @@ func (e *Edition) spread(a *Answers, p *possibles) {
 		if item.condition != nil {
 			applies = item.condition.may(p)
 		}
-		switch x := a.values[i]; {
+		switch x := a.own[i]; {
 		case applies == Not:
 			p.of[i] = possible{states: set(IsNotApplicable)}
 			continue
@@ -277,11 +277,12 @@ const maxLogOdds = 4 * largestLogOdds
 // band they are monotone, so their ends are where a band starts or ends.
 func (item *Item) numberRange(from, to Number) (lo, hi LogOdds) {
 	from, to = item.clamp(from), item.clamp(to)
-	lo, hi = item.weightOf(from), item.weightOf(from)
+	lo, hi = maxLogOdds, -maxLogOdds
 	take := func(n Number) {
-		w := item.weightOf(n)
+		w := item.counted(n, true).weight
 		lo, hi = min(lo, w), max(hi, w)
 	}
+	take(from)
 	take(to)
 	for _, floor := range item.floors {
 		if floor > from && floor <= to {
@@ -296,7 +297,7 @@ func (item *Item) numberRange(from, to Number) (lo, hi LogOdds) {
 func (p *possible) single(item *Item) (value, bool) {
 	for _, r := range reservedStates {
 		if p.states == set(r.state) {
-			return value{state: r.state, attr: int8(item.stateAttribute(r.state))}, true
+			return item.in(r.state), true
 		}
 	}
 	if p.states != set(Given) {
@@ -304,7 +305,7 @@ func (p *possible) single(item *Item) (value, bool) {
 	}
 	if item.isChoice() {
 		n := bits.TrailingZeros64(p.attrs)
-		return value{state: Given, attr: int8(n)}, bits.OnesCount64(p.attrs) == 1
+		return item.picked(n, true), bits.OnesCount64(p.attrs) == 1
 	}
-	return value{state: Given, n: p.lo, attr: int8(item.bandOf(p.lo))}, p.lo == p.hi
+	return item.counted(p.lo, true), p.lo == p.hi
 }

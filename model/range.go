@@ -28,8 +28,8 @@ func (e *Edition) StandardError(a *Answers) (se float64, ok bool) {
 }
 
 func (e *Edition) variance(a *Answers) (sum LogOdds, variance float64, ok bool) {
-	var v values
-	if e.card.Covariance == nil || !e.evaluate(a, &v) {
+	v, ok := a.whole()
+	if e.card.Covariance == nil || !ok {
 		return 0, 0, false
 	}
 	// What each coefficient is multiplied by, but for the zeros.
@@ -39,10 +39,8 @@ func (e *Edition) variance(a *Answers) (sum LogOdds, variance float64, ok bool) 
 	}
 	var space [2*MostCharacteristics + 1]factor
 	factors := append(space[:0], factor{e.base, 1})
-	sum = e.constant
 	for _, i := range e.scored {
 		item, x := &e.items[i], &v[i]
-		sum += item.weight(x)
 		if x.attr >= 0 && item.covariance[x.attr] >= 0 {
 			factors = append(factors, factor{item.covariance[x.attr], 1})
 		}
@@ -58,5 +56,5 @@ func (e *Edition) variance(a *Answers) (sum LogOdds, variance float64, ok bool) 
 			variance += float64(float64(f.x*g.x) * row[g.at].Float())
 		}
 	}
-	return sum, variance, true
+	return e.sum(v), variance, true
 }

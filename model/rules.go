@@ -28,7 +28,8 @@ type PolicyRule struct {
 // rule is a policy rule in tables: all tests must hold.
 type rule struct {
 	PolicyRule
-	tests []test
+	tests      []test
+	strictness int // of what it recommends
 }
 
 // Rules are the policy rules in the workbook's order.
@@ -52,22 +53,25 @@ func (e *Edition) DecliningRules(set RuleSet) []PolicyRule {
 	return list
 }
 
-// fire finds the rules that fire and makes the result as strict as they say.
-func (e *Edition) fire(v *values, r *Result) {
+// fire finds the rules that fire and makes the result as strict as the band
+// and they say.
+func (e *Edition) fire(v []value, r *Result) {
+	strict := e.strictness[r.Band]
 	for i := range e.rules {
 		rule := &e.rules[i]
 		if !rule.holds(v) {
 			continue
 		}
 		r.Fired |= 1 << i
-		r.Recommendation = stricter(r.Recommendation, rule.Effect.recommends())
+		strict = max(strict, rule.strictness)
 		if rule.Effect == LargestAmount && rule.Amount < r.LargestAmount.Or(Largest) {
 			r.LargestAmount = Some(rule.Amount)
 		}
 	}
+	r.Recommendation = byStrictness[strict]
 }
 
-func (r *rule) holds(v *values) bool {
+func (r *rule) holds(v []value) bool {
 	for i := range r.tests {
 		if t := &r.tests[i]; !t.holds(&v[t.index]) {
 			return false
@@ -101,7 +105,8 @@ func (c *compiler) rules() {
 				return
 			}
 			n = len(c.e.rules)
-			c.e.rules = append(c.e.rules, rule{PolicyRule: PolicyRule{Code: row.Code, Effect: row.Effect, Amount: row.Amount.Or(0)}})
+			c.e.rules = append(c.e.rules, rule{strictness: row.Effect.recommends().strictness(),
+				PolicyRule: PolicyRule{Code: row.Code, Effect: row.Effect, Amount: row.Amount.Or(0)}})
 			if row.Effect == "" {
 				bad("Effect", "missing_value", nil)
 			}

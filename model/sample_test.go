@@ -241,3 +241,9 @@ func answered(t testing.TB, e *Edition, answers ...string) *Answers {
 func TestSampleCompiles(t *testing.T) {
 	compiled(t, scorecardOf(t, sample))
 }
+
+// sampleAnswers are the first check's.
+func sampleAnswers(t testing.TB, e *Edition) *Answers {
+	return answered(t, e, "amount 1000", "term 12", "trade stall", "own_stall yes", "seasons spring", "years 5", "born 1980-05-06",
+		"household sales:100/week wages:50/month rent:80/month school:240/year!", "debts 20", "guarantor no", "sex woman")
+}

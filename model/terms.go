@@ -184,6 +184,6 @@ func (e *Edition) Money(minor int64) Number { return e.money(minor) }
 
 // AmountAndTerm are what the answers ask for; ok is false while one is missing.
 func (a *Answers) AmountAndTerm() (amount Number, term int, ok bool) {
-	x, y := a.values[a.edition.byCode[Amount]], a.values[a.edition.byCode[Term]]
+	x, y := a.own[a.edition.byCode[Amount]], a.own[a.edition.byCode[Term]]
 	return x.n, int(y.n / One), x.state == Given && y.state == Given
 }

@@ -25,13 +25,16 @@ type test struct {
 
 // holds asks the test of one value.
 func (t *test) holds(x *value) bool {
-	switch {
-	case x.state != Given:
+	if x.state != Given {
 		return t.states.has(x.state)
-	case t.toldOnly:
-		return x.told
 	}
-	in := t.among>>uint8(x.attr)&1 != 0 || (t.lo <= x.n && x.n <= t.hi) || slices.Contains(t.numbers, x.n)
+	in := t.among>>uint8(x.attr)&1 != 0 || (t.lo <= x.n && x.n <= t.hi)
+	switch {
+	case t.toldOnly:
+		in = x.told
+	case !in && t.numbers != nil:
+		in = slices.Contains(t.numbers, x.n)
+	}
 	return in != t.negated
 }
 
