@@ -146,11 +146,10 @@ func (p *panel) paymentWords(iv *interview) string {
 	return p.reader.T("desk.payment_left", "payment", money(payment), "left", money(left), "share", percent)
 }
 
-// ruleWords are the rules that fired, each on a line with what it does.
+// ruleWords are the rules that fire whatever else is answered, each on a line
+// with what it does. They are said at once, also where the result is not shown
+// yet: nobody need answer ten more questions for a loan that cannot be.
 func (p *panel) ruleWords(iv *interview) string {
-	if !iv.shows() && iv.edition.Scorecard().Card.ResultShown != model.WhenComplete {
-		return ""
-	}
 	var lines []string
 	for _, r := range iv.fires() {
 		label, text := p.labels.Rule(r)
@@ -158,6 +157,11 @@ func (p *panel) ruleWords(iv *interview) string {
 			label += ". " + text
 		}
 		lines = append(lines, p.reader.T("desk.rule."+strings.ReplaceAll(string(r.Effect), " ", "_"), "rule", label))
+	}
+	if iv.complete && iv.shows() {
+		if n := len(iv.edition.Ground(iv.answers, iv.today)); n > 0 {
+			lines = append(lines, p.reader.T("desk.beyond", "n", n))
+		}
 	}
 	return strings.Join(lines, "\n")
 }
