@@ -4,6 +4,7 @@ import (
 	"encoding/xml"
 	"errors"
 	"io"
+	"maps"
 	"path"
 	"slices"
 	"strings"
@@ -106,7 +107,7 @@ func (bk *book) read(b []byte, want func(string) bool) ([]model.Problem, error) 
 
 // readRelations reads the .rels part of every part that has one.
 func (bk *book) readRelations() error {
-	for key := range bk.parts.files {
+	for _, key := range slices.Sorted(maps.Keys(bk.parts.files)) {
 		dir, name := path.Split(key)
 		from, isRels := strings.CutSuffix(name, ".rels")
 		if base, ok := strings.CutSuffix(dir, "_rels/"); ok && isRels {

@@ -39,8 +39,12 @@ type table struct {
 type translator struct {
 	problems []model.Problem
 	table    *table
-	headless []int32 // columns of the table said to have no header
+	place    map[int32]int  // among the table's Columns, by the workbook's column
+	headless map[int32]bool // columns of the table said to have no header
 }
+
+// mostTable is how many cells, blank ones too, a table may have.
+const mostTable = 2_000_000
 
 // tables are the workbook's sheets as model wants them.
 func (bk *book) tables() ([]*table, []model.Problem) {
@@ -50,7 +54,8 @@ func (bk *book) tables() ([]*table, []model.Problem) {
 		form, known := formOf(s.name)
 		switch {
 		case known:
-			t.table, t.headless = &table{Sheet: model.Sheet{Name: form.Name}, form: form}, nil
+			t.table = &table{Sheet: model.Sheet{Name: form.Name}, form: form}
+			t.place, t.headless = map[int32]int{}, map[int32]bool{}
 			t.read(s)
 			list = append(list, t.table)
 		case s.name == tryItSheet, s.name == exampleSheet, s.name == problemsSheet:
@@ -74,6 +79,10 @@ func (t *translator) read(s *sheet) {
 		if n < 0 {
 			n = len(cells)
 		}
+		if len(t.table.Rows)*len(blank) > mostTable {
+			t.add(cells[0], "", 0, problem("too_many_cells", "most", strconv.Itoa(mostTable)))
+			return
+		}
 		t.row(cells[:n], slices.Clone(blank))
 		cells = cells[n:]
 	}
@@ -87,6 +96,7 @@ func (t *translator) header(c cell) {
 			name = known
 		}
 	}
+	t.place[c.col] = len(t.table.Columns)
 	t.table.Columns = append(t.table.Columns, name)
 	t.table.cols = append(t.table.cols, int(c.col))
 }
@@ -109,10 +119,10 @@ func (t *translator) row(cells []cell, texts []string) {
 	filled := false
 	item := t.item(cells)
 	for _, c := range cells {
-		i := slices.Index(t.table.cols, int(c.col))
-		if i < 0 || t.table.Columns[i] == "" {
-			if !slices.Contains(t.headless, c.col) {
-				t.headless = append(t.headless, c.col)
+		i, ok := t.place[c.col]
+		if !ok || t.table.Columns[i] == "" {
+			if !t.headless[c.col] {
+				t.headless[c.col] = true
 				t.add(c, "", number, model.Problem{Code: "column_without_header", Warning: true})
 			}
 			continue
@@ -138,7 +148,7 @@ func (t *translator) row(cells []cell, texts []string) {
 func (t *translator) item(cells []cell) string {
 	name := ""
 	for _, c := range cells {
-		if i := slices.Index(t.table.cols, int(c.col)); i >= 0 && t.table.Columns[i] == "Item" {
+		if i, ok := t.place[c.col]; ok && t.table.Columns[i] == "Item" {
 			name = c.text
 		}
 	}

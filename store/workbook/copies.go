@@ -15,8 +15,8 @@ import (
 )
 
 // Annotate writes a copy of the workbook that was read, with each problem as a
-// comment on its cell and all of them on a sheet of their own, in the words of
-// say. A comment that a cell had already is kept. The error is w's own, or a
+// comment on its cell (the first 1,000 of them) and all of them on a sheet of
+// their own, in the words of say. A comment that a cell had already is kept. The error is w's own, or a
 // Problem where the file cannot be copied.
 func (rd *Reading) Annotate(w io.Writer, say func(model.Problem) string) error {
 	return rd.copy(w, func(f *excelize.File) error {
@@ -25,7 +25,7 @@ func (rd *Reading) Annotate(w io.Writer, say func(model.Problem) string) error {
 		}
 		for _, s := range rd.book.sheets {
 			comments := map[string][]string{}
-			for _, p := range rd.Problems {
+			for _, p := range rd.Problems[:min(len(rd.Problems), mostProblems)] {
 				if p.Place.Cell != "" && strings.EqualFold(p.Place.Sheet, strings.TrimSpace(s.name)) {
 					comments[p.Place.Cell] = append(comments[p.Place.Cell], say(p))
 				}

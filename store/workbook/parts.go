@@ -5,7 +5,9 @@ import (
 	"encoding/xml"
 	"errors"
 	"io"
+	"maps"
 	"path"
+	"slices"
 	"strings"
 
 	"weighhouse/model"
@@ -179,8 +181,8 @@ func (p *parts) each(key string, do func(depth int, e xml.StartElement) error) e
 // rest reads every part that nobody opened: XML must be well formed, and all
 // bytes count.
 func (p *parts) rest() error {
-	for key, f := range p.files {
-		if p.opened[key] || strings.HasSuffix(f.Name, "/") {
+	for _, key := range slices.Sorted(maps.Keys(p.files)) {
+		if p.opened[key] || strings.HasSuffix(key, "/") {
 			continue
 		}
 		t := p.contentType(key)

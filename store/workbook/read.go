@@ -63,23 +63,31 @@ func read(b []byte) *Reading {
 // structural problems hide others.
 func structural(p model.Problem) bool {
 	switch p.Code {
-	case "missing_sheet", "repeated_sheet", "missing_column", "repeated_column", "too_many_rows", "too_many_problems":
+	case "missing_sheet", "repeated_sheet", "missing_column", "repeated_column", "too_many_rows", "too_many_cells", "too_many_problems":
 		return true
 	}
 	return false
 }
 
-// judge lists what model found, with cells' addresses. Of a cell that could
-// not be taken nothing more is said: it would only follow from that.
+// judge lists what model found, with cells' addresses. Of a cell or an item
+// that could not be taken nothing more is said: it would only follow from that.
 func (rd *Reading) judge(tables []*table, problems []model.Problem) {
-	type cellOf struct{ sheet, cell string }
-	refused := map[cellOf]bool{}
+	type spot struct{ sheet, cell, column string }
+	spotOf := func(p model.Place) spot {
+		if p.Cell != "" {
+			return spot{p.Sheet, p.Cell, ""}
+		}
+		return spot{p.Sheet, "", p.Column}
+	}
+	refused := map[spot]bool{}
 	for _, p := range rd.Problems {
-		refused[cellOf{p.Place.Sheet, p.Place.Cell}] = !p.Warning || refused[cellOf{p.Place.Sheet, p.Place.Cell}]
+		if !p.Warning {
+			refused[spotOf(p.Place)] = true
+		}
 	}
 	for _, p := range problems {
 		p.Place.Cell = address(tables, p.Place)
-		if p.Place.Cell == "" || !refused[cellOf{p.Place.Sheet, p.Place.Cell}] {
+		if at := spotOf(p.Place); !refused[at] || at == (spot{sheet: at.sheet}) {
 			rd.Problems = append(rd.Problems, p)
 		}
 	}

@@ -64,7 +64,7 @@ func TestCellsOfColumns(t *testing.T) {
 		want   []string
 	}{
 		{"formula for a number", formula("Attributes", "F3", 0.1), []string{"Attributes!F3 formula"}},
-		{"formula for a code", formula("Attributes", "B3", "stall"), []string{"Attributes!B3 formula"}},
+		{"formula for a code", formula("Attributes", "B3", "stall"), []string{"Attributes!B3 formula", "and more"}},
 		{"formula for a text", formula("Attributes", "C3", 0.1), []string{"Attributes!C3 formula_in_text"}},
 		{"date for a number", styled("Attributes", "F3", 46082, 14), []string{"Attributes!F3 date_in_number"}},
 		{"percentage for a number", styled("Attributes", "F3", 0.1, 10), nil},
@@ -79,7 +79,7 @@ func TestCellsOfColumns(t *testing.T) {
 		{"truth in a text", set("Characteristics", "B2", true), []string{"Characteristics!B2 not_text"}},
 		{"truth for yes", set("Characteristics", "P4", true), nil},
 		{"capitals in a list", set("Characteristics", "M2", "Scored"), nil},
-		{"not in the list", set("Characteristics", "M2", "used"), []string{"Characteristics!M2 not_in_list"}},
+		{"not in the list", set("Characteristics", "M2", "used"), []string{"Characteristics!M2 not_in_list", "and more"}},
 		{"blanks around", set("Attributes", "B3", " stall "), []string{"Attributes!B3 text_trimmed"}},
 		{"date as text", set("Card", "B13", "2026-02-01"), []string{"Card!B13 date_as_text"}},
 		{"number for a date", set("Card", "B13", 12), []string{"Card!B13 not_a_date"}},
@@ -89,12 +89,13 @@ func TestCellsOfColumns(t *testing.T) {
 		{"unknown column", set("Attributes", "M1", "Colour"), []string{"Attributes!M1 unknown_column"}},
 		{"content without header", set("Attributes", "M4", "blue"), []string{"Attributes!M4 column_without_header"}},
 		{"missing column", set("Attributes", "A1", ""), []string{"Attributes! missing_column", "Attributes!A2 column_without_header"}},
+		{"missing item", func(f *excelize.File) error { return f.RemoveRow("Card", 8) }, []string{"Card! missing_item"}},
 		{"unknown item", set("Card", "A40", "Colour"), []string{"Card!A40 unknown_item"}},
 		{"unknown sheet", func(f *excelize.File) error { _, err := f.NewSheet("Prices"); return err }, []string{"Prices! unknown_sheet"}},
 		{"missing sheet", func(f *excelize.File) error { return f.DeleteSheet("Bands") }, []string{"Bands! missing_sheet"}},
 		{"blank row between", func(f *excelize.File) error { return f.InsertRows("Attributes", 4, 1) }, nil},
 		{"gap between bands", set("Bands", "C3", 0.06), []string{`Bands!C3 band_gap`}},
-		{"swapped sign", set("Attributes", "F7", 0.3), []string{"Checks!N2 check_differs", "Checks!O2 check_differs", "Checks!P2 check_differs"}},
+		{"swapped sign", set("Attributes", "F7", 0.3), []string{"Checks!N2 check_differs", "Checks!O2 check_differs", "Checks!P2 check_differs", "and more"}},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			rd := spoilt(t, c.change)
@@ -111,7 +112,11 @@ func TestCellsOfColumns(t *testing.T) {
 				}
 				got = append(got, line)
 			}
-			if len(got) < len(c.want) || len(c.want) == 0 && len(got) > 0 {
+			if n := len(c.want) - 1; n >= 0 && c.want[n] == "and more" {
+				c.want = c.want[:n]
+				got = got[:min(n, len(got))]
+			}
+			if len(got) != len(c.want) {
 				t.Fatalf("got %q, want %q", got, c.want)
 			}
 			for i := range c.want {

@@ -3,6 +3,7 @@ package workbook
 import (
 	"io"
 	"slices"
+	"strconv"
 
 	"weighhouse/model"
 )
@@ -15,6 +16,9 @@ type Row struct {
 	// Problems are what must not be taken: formulas and error values.
 	Problems []model.Problem
 }
+
+// mostColumns is how wide a sheet that is no scorecard may be.
+const mostColumns = 1000
 
 // Rows are the filled rows of a workbook's first sheet, each cell as text: a
 // number as a decimal of at most 15 significant digits, a date as 2026-03-01.
@@ -38,6 +42,11 @@ func Rows(r io.Reader) ([]Row, error) {
 	var rows []Row
 	for _, s := range bk.sheets {
 		for _, c := range s.cells {
+			if c.col > mostColumns {
+				p := problem("too_many", "value", strconv.Itoa(int(c.col)), "most", strconv.Itoa(mostColumns))
+				p.Place = model.Place{Sheet: s.name, Cell: c.ref()}
+				return nil, p
+			}
 			if n := len(rows); n == 0 || rows[n-1].Row != int(c.row) {
 				rows = append(rows, Row{Row: int(c.row)})
 			}

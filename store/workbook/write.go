@@ -126,6 +126,12 @@ func (b *builder) styles() {
 	b.open[textFormat] = style(&excelize.Style{NumFmt: textFormat, Protection: unlocked})
 	day := fmt.Sprintf("[<%d]0;d mmm yyyy", firstDay)
 	b.open[dateFormat] = style(&excelize.Style{CustomNumFmt: &day, Protection: unlocked})
+	// A guarded sheet lets a row be deleted only where none of its cells is
+	// locked, so what no style is set for is open too.
+	if b.err == nil {
+		xfs := b.f.Styles.CellXfs.Xf
+		xfs[0].Protection, xfs[0].ApplyProtection = xfs[b.open[generalFormat]].Protection, xfs[b.open[generalFormat]].ApplyProtection
+	}
 }
 
 func formatFor(kind model.ColumnKind) int {
@@ -175,7 +181,6 @@ func (b *builder) items(form model.SheetForm, sheet model.Sheet) {
 // rows writes a sheet with a header and a row for each thing it lists.
 func (b *builder) rows(form model.SheetForm, sheet model.Sheet) {
 	last := max(spareRows, len(sheet.Rows)+100)
-	free := form.Name == "Checks" || form.Name == "Covariance"
 	widths := columnWidths(sheet)
 	for i, name := range sheet.Columns {
 		column, fixed := columnOf(form, name)
@@ -193,9 +198,8 @@ func (b *builder) rows(form model.SheetForm, sheet model.Sheet) {
 		}
 		b.dropDown(sheet.Name, fmt.Sprintf("%s2:%s%d", letter, letter, last), column)
 	}
-	if free { // room for the codes of further characteristics and coefficients
+	if form.Name == "Checks" || form.Name == "Covariance" { // room for further codes
 		from, to := len(sheet.Columns)+1, len(sheet.Columns)+model.MostCharacteristics
-		b.do(b.f.SetColStyle(sheet.Name, columnName(from)+":"+columnName(to), b.open[generalFormat]))
 		b.do(b.f.SetCellStyle(sheet.Name, refOf(from, 1), refOf(to, 1), b.heading))
 	}
 	b.height(sheet.Name, 1, sheet.Columns, widths)
