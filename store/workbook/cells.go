@@ -176,20 +176,27 @@ func (t *translator) column(name, item string) (model.Column, bool) {
 		}
 		return model.Column{}, false
 	}
+	c, _ := columnOf(form, name)
+	return c, c.Name != ""
+}
+
+// columnOf is what a column of a sheet of rows holds, and whether every
+// workbook has it. The column is nameless where the sheet has none of that
+// name.
+func columnOf(form model.SheetForm, name string) (c model.Column, fixed bool) {
 	if i := slices.IndexFunc(form.Columns, func(c model.Column) bool { return c.Name == name }); i >= 0 {
 		return form.Columns[i], true
 	}
-	free := model.Column{}
 	switch form.Name {
 	case "Checks":
-		free = model.CheckAnswerColumn
+		c = model.CheckAnswerColumn
 	case "Covariance":
-		free = model.CovarianceColumn
+		c = model.CovarianceColumn
 	default:
-		return free, false
+		return model.Column{}, false
 	}
-	free.Name = name
-	return free, name != ""
+	c.Name = name
+	return c, false
 }
 
 // add lists a problem with a cell.

@@ -11,8 +11,8 @@
 //   - book.go and sheet.go make the one pass that keeps what the cells hold,
 //     and lists what must not be there: hidden or merged cells, cells twice or
 //     out of order, macros, links to elsewhere;
-//   - cells.go turns each cell into the canonical text its column asks for, and
-//     package model judges what the texts say together.
+//   - cells.go turns each cell into the canonical text its column asks for,
+//     and read.go has package model judge what the texts say together.
 //
 // Cells are read by this pass alone, not by the library that writes: that one
 // takes a sheet cut in half for a short one, picks one of two cells with the
@@ -20,7 +20,8 @@
 // fills. With one reader there are no two opinions about a cell.
 //
 // Everything wrong is listed at once, with sheet and cell. Nothing is changed
-// in the file.
+// in the file; a Reading can write a copy that has the problems as comments,
+// or values in place of formulas.
 //
 // # Out
 //

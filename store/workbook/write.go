@@ -212,17 +212,6 @@ func (b *builder) rows(form model.SheetForm, sheet model.Sheet) {
 	}
 }
 
-// columnOf is the form of a column, and whether every workbook has it.
-func columnOf(form model.SheetForm, name string) (model.Column, bool) {
-	if i := slices.IndexFunc(form.Columns, func(c model.Column) bool { return c.Name == name }); i >= 0 {
-		return form.Columns[i], true
-	}
-	if form.Name == "Covariance" {
-		return model.CovarianceColumn, false
-	}
-	return model.CheckAnswerColumn, false
-}
-
 // noteName joins the numbered columns: Part 1 and Part 2 have one note.
 func noteName(column string) string { return strings.TrimRight(column, " 0123456789") }
 
@@ -237,6 +226,9 @@ func columnWidths(sheet model.Sheet) []float64 {
 		sum := 0.0
 		for i, name := range sheet.Columns {
 			least, longest := 8, 0
+			if len(sheet.Rows) == 0 { // room for what is to come
+				longest = 16
+			}
 			for _, word := range strings.Fields(name) {
 				least = max(least, len(word)+3)
 			}
