@@ -143,9 +143,10 @@ func TestSure(t *testing.T) {
 	if b.answer().State != model.Missing {
 		t.Error("another figure counted without being asked about")
 	}
+	before := len(*told)
 	b.put(given(400))
-	if !same(b.answer(), given(400)) {
-		t.Error("a figure kept before was questioned again")
+	if !same(b.answer(), given(400)) || len(*told) != before {
+		t.Errorf("a figure kept before was questioned again, or told: %v", b.answer())
 	}
 }
 
@@ -441,8 +442,12 @@ func TestWorksheetBox(t *testing.T) {
 	}
 
 	other := worksheet()
+	told = heard(other)
 	c, _ = shown(t, other)
 	other.put(b.answer())
+	if len(*told) > 0 {
+		t.Errorf("putting an answer told %v", *told)
+	}
 	if !slices.Equal(other.answer().Lines, want) || other.rows[0].period.period != model.Day {
 		t.Errorf("put: %v", other.answer())
 	}

@@ -77,7 +77,7 @@ func (e *entry) TypedKey(k *fyne.KeyEvent) {
 }
 
 func (e *entry) TypedRune(c rune) {
-	if (e.letter != nil && e.letter(c)) || !e.fits(1) {
+	if e.Disabled() || (e.letter != nil && e.letter(c)) || !e.fits(1) {
 		return
 	}
 	e.Entry.TypedRune(c)
@@ -100,6 +100,16 @@ func (e *entry) TypedShortcut(s fyne.Shortcut) {
 		}
 	}
 	e.Entry.TypedShortcut(s)
+}
+
+// rewrite changes the text without telling of it.
+func (e *entry) rewrite(text string) {
+	if text != e.Text {
+		heard := e.OnChanged
+		e.OnChanged = nil
+		e.SetText(text)
+		e.OnChanged = heard
+	}
 }
 
 // fits tells that there is room for n more characters, and says where not.

@@ -19,7 +19,7 @@ type typedBox struct {
 	unit    string
 	unknown string // the label of "does not know"; empty where it is not allowed
 
-	read       func(string) (model.Answer, error)
+	parse      func(string) (model.Answer, error)
 	unfinished func(string) bool
 	write      func(model.Answer) string
 	words      func(model.Answer) string // said beneath a sound answer
@@ -60,7 +60,7 @@ type numberKind struct {
 func newNumberBox(reader *words.Reader, keys keys, kind numberKind) *typedBox {
 	b := newTypedBox(reader, keys)
 	b.unit, b.unknown = kind.unit, kind.unknown
-	b.read = func(text string) (model.Answer, error) {
+	b.parse = func(text string) (model.Answer, error) {
 		n, err := reader.ParseNumber(text, kind.decimals)
 		if err == nil && n < 0 && !kind.negative {
 			err = model.Problem{Code: "number_negative", Args: model.Args{"value": text}}
@@ -87,7 +87,7 @@ func newNumberBox(reader *words.Reader, keys keys, kind numberKind) *typedBox {
 func newDateBox(reader *words.Reader, keys keys, yearAlone bool, unknown string) *typedBox {
 	b := newTypedBox(reader, keys)
 	b.unknown = unknown
-	b.read = func(text string) (model.Answer, error) {
+	b.parse = func(text string) (model.Answer, error) {
 		d, err := reader.ParseDate(text, yearAlone)
 		return model.Answer{State: model.Given, Date: d}, err
 	}
@@ -119,25 +119,25 @@ func (b *typedBox) put(a model.Answer) {
 	case model.StatedUnknown:
 		text = b.unknown
 	}
-	b.confirmed, b.now, b.told = text, a, a
-	b.rewrite(text)
-	b.look(true)
+	b.confirmed = text
+	b.entry.rewrite(text)
+	b.read(true)
+	b.told = b.now
 }
 
-// rewrite changes the text without hearing of it.
-func (b *typedBox) rewrite(text string) {
-	if text != b.entry.Text {
-		heard := b.entry.OnChanged
-		b.entry.OnChanged = nil
-		b.entry.SetText(text)
-		b.entry.OnChanged = heard
+// look reads the text and tells what is new.
+func (b *typedBox) look(whole bool) {
+	b.read(whole)
+	if !same(b.now, b.told) {
+		b.told = b.now
+		b.tell(b.now)
 	}
 }
 
-// look reads the text and says what there is to say. While it is being typed
+// read reads the text and says what there is to say. While it is being typed
 // a number that may still become right is let be; whole is true when the
 // typing has ended.
-func (b *typedBox) look(whole bool) {
+func (b *typedBox) read(whole bool) {
 	text := b.entry.Text
 	b.now = model.Answer{}
 	switch {
@@ -151,7 +151,7 @@ func (b *typedBox) look(whole bool) {
 		b.now = model.Answer{State: model.StatedUnknown}
 		b.note.hint("")
 	default:
-		a, err := b.read(text)
+		a, err := b.parse(text)
 		if err == nil {
 			b.weigh(a, text, whole)
 			break
@@ -160,10 +160,6 @@ func (b *typedBox) look(whole bool) {
 		if whole || !b.unfinished(text) {
 			b.note.refuse(b.reader.Sentence(err.(model.Problem)))
 		}
-	}
-	if !same(b.now, b.told) {
-		b.told = b.now
-		b.tell(b.now)
 	}
 }
 
@@ -221,7 +217,7 @@ func (b *typedBox) moved(gained bool) {
 		if b.confirmed == b.entry.Text {
 			b.confirmed = tidy
 		}
-		b.rewrite(tidy)
+		b.entry.rewrite(tidy)
 	}
 	b.look(true)
 }

@@ -102,24 +102,14 @@ func (b *worksheetBox) put(a model.Answer) {
 				r.period.show(p)
 			}
 		}
-		r.rewrite(text)
+		r.entry.rewrite(text)
 	}
 	if a.State == model.Given && a.Lines == nil {
 		b.single = model.Some(a.Number)
 	}
-	b.look(nil)
 	b.confirmed = b.total()
-	b.look(nil)
+	b.read(nil)
 	b.told = b.now
-}
-
-func (r *worksheetRow) rewrite(text string) {
-	if text != r.entry.Text {
-		heard := r.entry.OnChanged
-		r.entry.OnChanged = nil
-		r.entry.SetText(text)
-		r.entry.OnChanged = heard
-	}
 }
 
 // money reads one line; an empty one is not set.
@@ -159,9 +149,18 @@ func (b *worksheetBox) total() (sum model.Maybe[model.Number]) {
 	return b.single
 }
 
-// look reads everything; typing is the row at work, whose half-typed amount is
-// let be, or nil.
+// look reads everything and tells what is new.
 func (b *worksheetBox) look(typing *worksheetRow) {
+	b.read(typing)
+	if !same(b.now, b.told) || !slices.Equal(b.now.Lines, b.told.Lines) {
+		b.told = b.now
+		b.tell(b.now)
+	}
+}
+
+// read reads everything and says what there is to say; typing is the row at
+// work, whose half-typed amount is let be, or nil.
+func (b *worksheetBox) read(typing *worksheetRow) {
 	lines, bad, err := b.lines()
 	sum := b.total()
 	b.now = model.Answer{}
@@ -194,10 +193,6 @@ func (b *worksheetBox) look(typing *worksheetRow) {
 		setFigure(b.sum, b.reader.Money(sum.Value, b.kind.decimals, b.kind.currency), theme.ColorNameForeground)
 	default:
 		setFigure(b.sum, "", theme.ColorNameForeground)
-	}
-	if !same(b.now, b.told) || !slices.Equal(b.now.Lines, b.told.Lines) {
-		b.told = b.now
-		b.tell(b.now)
 	}
 }
 
@@ -244,7 +239,7 @@ func (b *worksheetBox) moved(r *worksheetRow, gained bool) {
 		return
 	}
 	if m, err := r.money(); err == nil && m.Set {
-		r.rewrite(b.reader.Number(m.Amount, b.kind.decimals))
+		r.entry.rewrite(b.reader.Number(m.Amount, b.kind.decimals))
 	}
 	b.look(nil)
 }
@@ -299,7 +294,7 @@ func (b *worksheetBox) CreateRenderer() fyne.WidgetRenderer {
 	for _, r := range b.rows {
 		sign := "+"
 		if r.line.flow == model.TakesAway {
-			sign = "−"
+			sign = "–" // the font has no minus sign
 		}
 		label := widget.NewLabel(r.line.label)
 		label.Truncation = fyne.TextTruncateEllipsis

@@ -81,6 +81,20 @@ func TestMessagesAreComplete(t *testing.T) {
 	}
 }
 
+// The window's font draws all of Latin-1 and Latin Extended-A and, beyond
+// them, the marks of these sentences; not every machine has other fonts.
+func TestMessagesCanBeDrawn(t *testing.T) {
+	for _, l := range Languages() {
+		for key, m := range messages(t, l.Code) {
+			for _, c := range m.One + m.Many + m.Other {
+				if c > 0x17f && !strings.ContainsRune("“”‘’…–", c) {
+					t.Errorf("%s: %s has %q", l.Code, key, c)
+				}
+			}
+		}
+	}
+}
+
 // Every entry of the model's closed lists that a person sees has a name.
 func TestNames(t *testing.T) {
 	english := messages(t, "en")
