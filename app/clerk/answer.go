@@ -84,7 +84,8 @@ func (q *interview) result() {
 	if !ok {
 		return // all asks until nothing is missing
 	}
-	card, terms := q.edition.Scorecard().Card, q.edition.Scorecard().Terms
+	card := q.edition.Scorecard().Card
+	amount, _, _ := q.answers.AmountAndTerm()
 	band, caution := q.labels.Band(r.Band)
 	say := func(text string) { fmt.Fprintln(q.out, text) }
 	head := func(key string) { say("\n" + q.words.T(key)) }
@@ -94,8 +95,12 @@ func (q *interview) result() {
 	if low, high, ok := q.edition.Range(q.answers); ok {
 		say(indent + q.words.T("clerk.range", "low", low, "high", high))
 	}
+	say(indent + q.words.T("desk.decides."+string(q.edition.Decider(r, amount))))
 	if r.LargestAmount.Set {
-		say(indent + q.words.T("desk.largest", "amount", q.words.Money(r.LargestAmount.Value, int(terms.MoneyDecimals), terms.Currency)))
+		say(indent + q.words.T("desk.largest", "amount", q.money(r.LargestAmount.Value)))
+	}
+	if text := q.payment(); text != "" {
+		say(indent + text)
 	}
 	if r.Fired != 0 {
 		head("clerk.rules")
@@ -115,7 +120,11 @@ func (q *interview) result() {
 	if len(ground) > 0 {
 		head("clerk.ground")
 		for _, p := range ground {
-			say(indent + q.words.Problem(p))
+			text := q.words.Sentence(p)
+			if item, ok := q.edition.Item(p.Place.Column); ok {
+				text = q.question(item) + " " + text
+			}
+			say(indent + text)
 		}
 	}
 	say("")
@@ -125,6 +134,32 @@ func (q *interview) result() {
 	say(q.words.T("desk.caution"))
 	say(q.words.T("clerk.telephone_code", "code", q.edition.TelephoneCode()))
 	say(q.words.T("clerk.ask_not_kept"))
+}
+
+// payment sets the payment against what is left each month, where the edition
+// works both out.
+func (q *interview) payment() string {
+	share, payment, left, ok := q.edition.PaymentShare()
+	if !ok {
+		return ""
+	}
+	worked := q.edition.Work(q.answers)
+	args := []any{"payment", q.money(worked[payment].Low), "left", q.money(worked[left].Low)}
+	switch {
+	case worked[payment].State != model.Given:
+		return ""
+	case worked[left].State != model.Given:
+		return q.words.T("desk.payment", args...)
+	case worked[share].State == model.IsNothingLeft:
+		return q.words.T("desk.payment_nothing_left", args...)
+	}
+	// A Number has millionths, a Rate billionths.
+	return q.words.T("desk.payment_left", append(args, "share", model.Rate(worked[share].Low*1000))...)
+}
+
+func (q *interview) money(n model.Number) string {
+	terms := q.edition.Scorecard().Terms
+	return q.words.Money(n, int(terms.MoneyDecimals), terms.Currency)
 }
 
 // reasons are those of the rules that declined, else of the answers that spoke

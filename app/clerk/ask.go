@@ -5,8 +5,12 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"os"
 	"slices"
 	"strings"
+	"unicode"
+
+	"golang.org/x/term"
 
 	"weighhouse/app/words"
 	"weighhouse/model"
@@ -45,6 +49,7 @@ type interview struct {
 	answers *model.Answers
 	labels  *words.Labels
 	lines   *bufio.Scanner
+	echo    bool // what is read is written out: nobody sees it typed
 }
 
 // longestLine is the longest line that is read; nobody types one.
@@ -53,6 +58,8 @@ const longestLine = 1 << 20
 func newInterview(k *clerk, e *model.Edition, on model.Date) *interview {
 	q := &interview{clerk: k, edition: e, labels: words.LabelsOf(e, k.words.Style().Language), lines: bufio.NewScanner(k.in)}
 	q.lines.Buffer(nil, longestLine)
+	f, ok := k.in.(*os.File)
+	q.echo = !ok || !term.IsTerminal(int(f.Fd()))
 	client := e.Scorecard().Card.For
 	if asked := model.ClientKind(k.option["client"]); client == model.AllClients && asked != "" {
 		client = asked
@@ -72,29 +79,30 @@ func (q *interview) all() error {
 		}
 	}
 	items := q.edition.Items()
-	for i := 0; i < len(items); i++ {
-		if items[i].Kind == model.Computed {
-			continue
-		}
-		if q.answers.Applies(i) == model.Not {
+	for i := 0; ; i++ {
+		var err error
+		switch {
+		case i == len(items):
+			if q.edition.Scorecard().Card.ResultShown != model.WhenHandedIn {
+				return nil
+			}
+			if _, err = q.line("\n" + q.words.T("clerk.hand_in") + " "); err == nil {
+				return nil
+			}
+		case items[i].Kind == model.Computed:
+		case q.answers.Applies(i) == model.Not:
 			fmt.Fprintf(q.out, "\n%s  %s\n%s%s\n", q.place(&items[i]), q.question(&items[i]), indent, q.words.T("desk.not_asked"))
-			continue
+		default:
+			if err = q.item(&items[i]); err == nil {
+				q.soFar()
+			}
 		}
-		err := q.item(&items[i])
 		if err == errBack {
 			i = max(q.before(i), 0) - 1
-			continue
-		}
-		if err != nil {
+		} else if err != nil {
 			return err
 		}
-		q.soFar()
 	}
-	if q.edition.Scorecard().Card.ResultShown == model.WhenHandedIn {
-		_, err := q.line("\n" + q.words.T("clerk.hand_in") + " ")
-		return err
-	}
-	return nil
 }
 
 // before is the question asked before one, -1 where there is none.
@@ -118,12 +126,23 @@ func (q *interview) line(prompt string) (string, error) {
 		}
 		return "", io.EOF
 	}
-	text := strings.TrimSpace(strings.ToValidUTF8(q.lines.Text(), "\uFFFD"))
+	text := strings.TrimSpace(strings.Map(func(c rune) rune {
+		if unicode.IsControl(c) || unicode.Is(unicode.Cf, c) { // it may be written out again
+			return unicode.ReplacementChar
+		}
+		return c
+	}, q.lines.Text()))
+	if q.echo {
+		fmt.Fprintln(q.out, text)
+	}
 	if text == "<" {
 		return "", errBack
 	}
 	return text, nil
 }
+
+// wrong says what is wrong with what was typed.
+func (q *interview) wrong(p model.Problem) { fmt.Fprintln(q.out, indent+q.words.Sentence(p)) }
 
 func (q *interview) client() error {
 	fmt.Fprintf(q.out, "\n%s\n", q.words.T("desk.client"))
@@ -153,16 +172,19 @@ func (q *interview) yesNo(prompt string) (bool, error) {
 		if n := pick(text, options); n >= 0 {
 			return n == 0, nil
 		}
+		if text == "" {
+			q.wrong(problem("clerk_ask_empty"))
+		} else {
+			q.wrong(problem("clerk_ask_pick", "value", text))
+		}
 	}
 }
 
 // item asks one question until its answer can stand.
 func (q *interview) item(item *model.Item) error {
 	fmt.Fprintf(q.out, "\n%s  %s\n", q.place(item), q.question(item))
-	for _, text := range []string{q.labels.Help(item), q.labels.Unit(item)} {
-		if text != "" {
-			fmt.Fprintln(q.out, indent+text)
-		}
+	if help := q.labels.Help(item); help != "" {
+		fmt.Fprintln(q.out, indent+help)
 	}
 	q.options(item)
 	old := q.answers.At(item.Index)
@@ -178,7 +200,7 @@ func (q *interview) item(item *model.Item) error {
 			if !ok {
 				return err
 			}
-			fmt.Fprintln(q.out, indent+q.words.Sentence(p))
+			q.wrong(p)
 			continue
 		}
 		if answer.State == model.Given {
@@ -192,7 +214,7 @@ func (q *interview) item(item *model.Item) error {
 		i := slices.IndexFunc(problems, func(p model.Problem) bool { return !p.Warning })
 		switch {
 		case i >= 0:
-			fmt.Fprintln(q.out, indent+q.words.Sentence(problems[i]))
+			q.wrong(problems[i])
 			sure = model.Answer{}
 			continue
 		case len(problems) > 0 && q.edition.AnswerText(item.Index, answer) != q.edition.AnswerText(item.Index, sure):
@@ -287,7 +309,7 @@ func (q *interview) read(item *model.Item, sure model.Answer) (model.Answer, err
 	if item.Kind == model.Worksheet {
 		return q.worksheet(item, sure)
 	}
-	text, err := q.line(indent + "> ")
+	text, err := q.line(indent + strings.TrimLeft(q.labels.Unit(item)+" > ", " "))
 	switch {
 	case err != nil:
 		return model.Answer{}, err
@@ -345,9 +367,9 @@ func (q *interview) worksheet(item *model.Item, sure model.Answer) (model.Answer
 		case text == "":
 			a.Lines[i] = model.Money{}
 		default:
-			money, err := q.money(text, line.Period)
+			money, err := q.amount(text, line.Period)
 			if p, ok := err.(model.Problem); ok {
-				fmt.Fprintln(q.out, indent+q.words.Sentence(p))
+				q.wrong(p)
 				continue
 			}
 			a.Lines[i] = money
@@ -364,9 +386,9 @@ func (q *interview) per(p model.Period) string {
 	return q.words.T("box.per", "period", q.words.Name(p))
 }
 
-// money reads an amount and, where it is not the usual one, its period's name
+// amount reads an amount and, where it is not the usual one, its period's name
 // or first letters: "40", "40 week".
-func (q *interview) money(text string, usual model.Period) (model.Money, error) {
+func (q *interview) amount(text string, usual model.Period) (model.Money, error) {
 	m := model.Money{Set: true}
 	amount := strings.TrimRight(text, "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZáéíóúñâêîôûàèùçÁÉÍÓÚÑ")
 	if word := text[len(amount):]; word != "" {
