@@ -11,9 +11,8 @@ import (
 // The rows above the questions: who it is, whether they are known, and which
 // product. They decide the edition.
 
-func (p *interviewPage) applicantRows(list *fyne.Container) {
+func (p *interviewPage) applicantRows() []fyne.CanvasObject {
 	d := p.desk
-	list.Add(p.sectionHead(d.reader.T("desk.applicant")))
 
 	name := newNameBox(d.reader, d.key, 300)
 	name.putText(p.iv.who)
@@ -60,9 +59,7 @@ func (p *interviewPage) applicantRows(list *fyne.Container) {
 			p.change(codes[a.Attribute], p.iv.answers.Client)
 		}
 	}
-	for _, r := range []*row{p.who, p.kind, p.what} {
-		list.Add(r)
-	}
+	return []fyne.CanvasObject{p.sectionHead(d.reader.T("desk.applicant")), p.who, p.kind, p.what}
 }
 
 // options are those of a picker that is no characteristic's.

@@ -91,8 +91,7 @@ func (p *interviewPage) object() fyne.CanvasObject {
 	p.panel = newPanel(d.reader, p.labels, e, d.caution())
 	p.strip = newStrip(d.reader, p.labels)
 	p.strip.hide(d.hidden)
-	list := newStack()
-	p.applicantRows(list)
+	list := p.applicantRows()
 	section := ""
 	p.rows = make([]*row, len(e.Items()))
 	for i := range e.Items() {
@@ -102,12 +101,12 @@ func (p *interviewPage) object() fyne.CanvasObject {
 		}
 		if item.Section != section {
 			section = item.Section
-			list.Add(p.sectionHead(p.labels.Section(item)))
+			list = append(list, p.sectionHead(p.labels.Section(item)))
 		}
 		p.rows[i] = p.questionRow(item)
-		list.Add(p.rows[i])
+		list = append(list, p.rows[i])
 	}
-	p.scroll = container.NewVScroll(list)
+	p.scroll = container.NewVScroll(newStack(list))
 	var side fyne.CanvasObject = p.panel.object
 	if d.hidden {
 		side = d.curtain()

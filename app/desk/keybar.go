@@ -65,7 +65,7 @@ func (d *Desk) key(name fyne.KeyName) bool {
 func (d *Desk) keyBar() fyne.CanvasObject {
 	bar := container.New(layout.NewCustomPaddedHBoxLayout(2))
 	for _, k := range windowKeys {
-		bar.Add(newKeyHint(string(k.key), d.reader.T("shell."+k.word), func() { d.key(k.key) }))
+		bar.Objects = append(bar.Objects, newKeyHint(string(k.key), d.reader.T("shell."+k.word), func() { d.key(k.key) }))
 	}
 	return container.NewStack(canvas.NewRectangle(shade(colorBand)), container.NewHScroll(bar))
 }

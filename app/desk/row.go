@@ -94,6 +94,17 @@ type questionRenderer struct {
 	question []*canvas.Text
 	help     []*canvas.Text
 	objects  []fyne.CanvasObject
+
+	// Every frame asks every row how much room it needs, several times over;
+	// that changes only with the width.
+	said   widthAnd[float32]   // by say
+	needed widthAnd[fyne.Size] // by MinSize
+}
+
+// widthAnd is what was worked out for a width.
+type widthAnd[T any] struct {
+	width float32
+	value T
 }
 
 func (v *questionRenderer) Objects() []fyne.CanvasObject { return v.objects }
@@ -102,13 +113,18 @@ func (v *questionRenderer) Destroy()                     {}
 // MinSize leaves room for the question and its help, and for the box and its
 // note beside or beneath them.
 func (v *questionRenderer) MinSize() fyne.Size {
-	c := v.columns(max(v.row.Size().Width, 480))
-	text := 3 + v.say(c.questionWidth)
-	boxed := v.row.box.MinSize().Height + v.row.box.line().MinSize().Height
-	if v.row.wide {
-		return fyne.NewSize(480, text+boxed+2*questionGap)
+	width := max(v.row.Size().Width, 480)
+	if v.needed.width == width {
+		return v.needed.value
 	}
-	return fyne.NewSize(480, max(text, boxed)+questionGap+3)
+	text := 3 + v.say(v.columns(width).questionWidth)
+	boxed := v.row.box.MinSize().Height + v.row.box.line().MinSize().Height
+	height := max(text, boxed) + questionGap + 3
+	if v.row.wide {
+		height = text + boxed + 2*questionGap
+	}
+	v.needed = widthAnd[fyne.Size]{width, fyne.NewSize(480, height)}
+	return v.needed.value
 }
 
 // columns are where the parts of a row start and how wide they are.
@@ -130,6 +146,9 @@ func (v *questionRenderer) columns(width float32) columns {
 // say fills in the question's and the help's lines for a width, one beneath
 // the other, and returns their height.
 func (v *questionRenderer) say(width float32) float32 {
+	if v.said.width == width {
+		return v.said.value
+	}
 	y := float32(0)
 	fill := func(text string, into []*canvas.Text, size float32) {
 		for i, line := range wrap(text, width, size, fyne.TextStyle{}, len(into)) {
@@ -143,6 +162,7 @@ func (v *questionRenderer) say(width float32) float32 {
 	}
 	fill(v.row.question, v.question, theme.TextSize())
 	fill(v.row.help, v.help, theme.CaptionTextSize())
+	v.said = widthAnd[float32]{width, y}
 	return y
 }
 

@@ -9,9 +9,9 @@ type stack struct {
 	width float32
 }
 
-func newStack() *fyne.Container {
+func newStack(rows []fyne.CanvasObject) *fyne.Container {
 	s := &stack{}
-	s.of = &fyne.Container{Layout: s}
+	s.of = &fyne.Container{Layout: s, Objects: rows}
 	return s.of
 }
 
