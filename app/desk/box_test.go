@@ -63,14 +63,14 @@ func TestMoneyBox(t *testing.T) {
 	if c.Focused() != after {
 		t.Error("Enter did not go on")
 	}
-	if b.entry.Text != "1,250.00" {
+	if b.entry.Text != "1,250" {
 		t.Errorf("left as %q", b.entry.Text)
 	}
 	if !same((*told)[len(*told)-1], given(1250)) {
 		t.Errorf("told %v", *told)
 	}
 	press(c, "Shift+Tab")
-	if c.Focused() != b.entry || b.entry.SelectedText() != "1,250.00" {
+	if c.Focused() != b.entry || b.entry.SelectedText() != "1,250" {
 		t.Errorf("coming back, %q is selected", b.entry.SelectedText())
 	}
 	typeText(c, "7")
@@ -411,11 +411,11 @@ func TestWorksheetBox(t *testing.T) {
 		t.Errorf("hint %q", b.note.text)
 	}
 	typeText(c, "120")
-	if b.sum.Text != "520.00\u00a0crowns" || b.note.text != "one hundred and twenty crowns" {
+	if b.sum.Text != "520\u00a0crowns" || b.note.text != "one hundred and twenty crowns" {
 		t.Errorf("%q, %q", b.sum.Text, b.note.text)
 	}
 	typeText(c, "d")
-	if b.sum.Text != "3,650.00\u00a0crowns" || b.rows[0].entry.Text != "120" {
+	if b.sum.Text != "3,650\u00a0crowns" || b.rows[0].entry.Text != "120" {
 		t.Errorf("a day: %q, %q", b.sum.Text, b.rows[0].entry.Text)
 	}
 	press(c, "Return")
@@ -431,10 +431,10 @@ func TestWorksheetBox(t *testing.T) {
 	typeText(c, "650")
 	press(c, "Return")
 	want := []model.Money{{Amount: model.Whole(120), Period: model.Day, Set: true}, {Amount: model.Whole(650), Set: true}}
-	if a := b.answer(); a.State != model.Given || !slices.Equal(a.Lines, want) || b.sum.Text != "3,000.00\u00a0crowns" {
+	if a := b.answer(); a.State != model.Given || !slices.Equal(a.Lines, want) || b.sum.Text != "3,000\u00a0crowns" {
 		t.Errorf("%v, %q", a, b.sum.Text)
 	}
-	if c.Focused() != after || b.rows[1].entry.Text != "650.00" {
+	if c.Focused() != after || b.rows[1].entry.Text != "650" {
 		t.Errorf("Enter on the last line: %T, %q", c.Focused(), b.rows[1].entry.Text)
 	}
 	if last := (*told)[len(*told)-1]; !slices.Equal(last.Lines, want) {
@@ -457,7 +457,7 @@ func TestWorksheetBox(t *testing.T) {
 		t.Errorf("unknown: %v, %q", other.answer(), other.sum.Text)
 	}
 	other.put(given(75))
-	if !same(other.answer(), given(75)) || other.sum.Text != "75.00\u00a0crowns" {
+	if !same(other.answer(), given(75)) || other.sum.Text != "75\u00a0crowns" {
 		t.Errorf("one figure: %v, %q", other.answer(), other.sum.Text)
 	}
 }
@@ -558,5 +558,27 @@ func TestWrap(t *testing.T) {
 	}
 	if got := wrap("one two six ten", width, 12, fyne.TextStyle{}, 1)[0]; !strings.HasSuffix(got, "…") {
 		t.Errorf("too long: %q", got)
+	}
+}
+
+// An amount that the product does not lend keeps the focus until it is mended.
+func TestARefusedAnswerKeepsTheFocus(t *testing.T) {
+	b := newNumberBox(english(), nil, numberKind{})
+	b.on().check = func(a model.Answer) []model.Problem {
+		if a.Number <= model.Whole(6000) {
+			return nil
+		}
+		return []model.Problem{{Code: "outside_product", Args: model.Args{"value": a.Number.String(), "least": "200", "most": "6000"}}}
+	}
+	c, after := shown(t, b)
+	typeText(c, "7000")
+	press(c, "Return", "Return")
+	if c.Focused() != b.entry || b.note.text == "" {
+		t.Errorf("Enter left a refused amount, saying %q", b.note.text)
+	}
+	press(c, "Backspace")
+	press(c, "Return")
+	if c.Focused() != after || !same(b.answer(), given(700)) {
+		t.Errorf("a mended amount did not go on: %v", b.answer())
 	}
 }

@@ -28,6 +28,7 @@ type typedBox struct {
 	told      model.Answer
 	confirmed string // the text that was confirmed, or was kept before
 	asked     string // the text that Enter has asked about
+	refused   bool   // the answer reads, but cannot stand
 }
 
 // typedMost is how many characters a number or a date box holds.
@@ -72,7 +73,7 @@ func newNumberBox(reader *words.Reader, keys keys, kind numberKind) *typedBox {
 	}
 	b.write = func(a model.Answer) string {
 		if kind.money {
-			return reader.Number(a.Number, kind.decimals)
+			return reader.Amount(a.Number, kind.decimals)
 		}
 		return reader.Number(a.Number, words.Shortest)
 	}
@@ -139,7 +140,7 @@ func (b *typedBox) look(whole bool) {
 // typing has ended.
 func (b *typedBox) read(whole bool) {
 	text := b.entry.Text
-	b.now = model.Answer{}
+	b.now, b.refused = model.Answer{}, false
 	switch {
 	case text == "":
 		hint := ""
@@ -168,7 +169,7 @@ func (b *typedBox) weigh(a model.Answer, text string, whole bool) {
 	v := b.judge(a)
 	switch {
 	case v.refusal != "":
-		b.now = a
+		b.now, b.refused = a, true
 		b.note.refuse(v.refusal)
 	case v.question != "" && b.confirmed != text:
 		if whole {
@@ -199,7 +200,7 @@ func (b *typedBox) enter() {
 	}
 	b.asked = text
 	b.look(true)
-	if text == "" || b.now.State != model.Missing {
+	if !b.refused && (text == "" || b.now.State != model.Missing) {
 		b.goOn(b.entry)
 	}
 }

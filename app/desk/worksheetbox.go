@@ -97,7 +97,7 @@ func (b *worksheetBox) put(a model.Answer) {
 		text := ""
 		r.period.show(r.line.usual)
 		if i < len(a.Lines) && a.Lines[i].Set {
-			text = b.reader.Number(a.Lines[i].Amount, b.kind.decimals)
+			text = b.reader.Amount(a.Lines[i].Amount, b.kind.decimals)
 			if p := a.Lines[i].Period; p != "" {
 				r.period.show(p)
 			}
@@ -239,7 +239,7 @@ func (b *worksheetBox) moved(r *worksheetRow, gained bool) {
 		return
 	}
 	if m, err := r.money(); err == nil && m.Set {
-		r.entry.rewrite(b.reader.Number(m.Amount, b.kind.decimals))
+		r.entry.rewrite(b.reader.Amount(m.Amount, b.kind.decimals))
 	}
 	b.look(nil)
 }

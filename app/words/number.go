@@ -85,12 +85,21 @@ func (r *Reader) Number(n model.Number, decimals int) string {
 	return r.marks.write(text)
 }
 
+// Amount writes an amount of money: a whole one without decimals, any other
+// with all that the currency has.
+func (r *Reader) Amount(n model.Number, decimals int) string {
+	if n = n.Round(decimals); n%model.One == 0 {
+		decimals = 0
+	}
+	return r.Number(n, decimals)
+}
+
 // Money writes an amount with its currency's name, such as "3,200 crowns".
 func (r *Reader) Money(n model.Number, decimals int, currency string) string {
 	if currency == "" {
-		return r.Number(n, decimals)
+		return r.Amount(n, decimals)
 	}
-	return r.Number(n, decimals) + nbsp + currency
+	return r.Amount(n, decimals) + nbsp + currency
 }
 
 // Score writes a score in whole points, half away from zero.

@@ -50,7 +50,7 @@ func TestNumberStyles(t *testing.T) {
 	if got := Lakh.Sample(); got != "12,34,567.89" {
 		t.Errorf("sample %q", got)
 	}
-	if got := reader("en", PointComma).Money(number(t, "3200"), 2, "crowns"); got != "3,200.00\u00a0crowns" {
+	if got := reader("en", PointComma).Money(number(t, "3200"), 2, "crowns"); got != "3,200\u00a0crowns" {
 		t.Errorf("money %q", got)
 	}
 }
