@@ -576,7 +576,7 @@ func TestARefusedAnswerKeepsTheFocus(t *testing.T) {
 	if c.Focused() != b.entry || b.note.text == "" {
 		t.Errorf("Enter left a refused amount, saying %q", b.note.text)
 	}
-	press(c, "Backspace")
+	press(c, "BackSpace")
 	press(c, "Return")
 	if c.Focused() != after || !same(b.answer(), given(700)) {
 		t.Errorf("a mended amount did not go on: %v", b.answer())
