@@ -333,6 +333,9 @@ func (q *interview) read(item *model.Item, sure model.Answer) (model.Answer, err
 		a.Date, err = q.words.ParseDate(text, true)
 	default:
 		a.Number, err = q.words.ParseNumber(text, int(item.Decimals))
+		if err == nil && a.Number < 0 && item.LowestAccepted.Or(0) >= 0 {
+			err = problem("number_negative", "value", text)
+		}
 	}
 	return a, err
 }
@@ -407,7 +410,7 @@ func (q *interview) amount(text string, usual model.Period) (model.Money, error)
 	var err error
 	m.Amount, err = q.words.ParseNumber(strings.TrimRight(amount, " /"), int(q.edition.Scorecard().Terms.MoneyDecimals))
 	if err == nil && m.Amount < 0 {
-		err = problem("file_line_negative")
+		err = problem("number_negative", "value", text)
 	}
 	return m, err
 }

@@ -2,6 +2,7 @@ package main
 
 import (
 	"bytes"
+	"database/sql"
 	"errors"
 	"fmt"
 	"os"
@@ -12,6 +13,7 @@ import (
 	"testing"
 
 	"weighhouse/model"
+	"weighhouse/store"
 	"weighhouse/store/workbook"
 )
 
@@ -262,5 +264,29 @@ func TestProve(t *testing.T) {
 	code, out, problems = call(t, dir, "", "prove", "-branch", ".")
 	if code != 0 || problems != "" || !strings.HasPrefix(out, "200 kept results give the same figures again") {
 		t.Error(code, out, problems)
+	}
+	tamper(t, filepath.Join(dir, store.FileName))
+	code, out, problems = call(t, dir, "", "prove", "-branch", ".")
+	if code != 1 || problems != "" || !strings.Contains(out, "Entry 5 ") {
+		t.Error(code, out, problems)
+	}
+}
+
+// tamper moves the fifth entry of a branch's journal by a second, past every
+// trigger.
+func tamper(t *testing.T, path string) {
+	t.Helper()
+	db, err := sql.Open("sqlite", path)
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer db.Close()
+	var triggers string
+	err = db.QueryRow("SELECT group_concat('DROP TRIGGER ' || name, ';') FROM sqlite_schema WHERE type = 'trigger'").Scan(&triggers)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if _, err := db.Exec(triggers + "; UPDATE journal SET at = at + 1000 WHERE seq = 5"); err != nil {
+		t.Fatal(err)
 	}
 }

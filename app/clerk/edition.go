@@ -1,6 +1,7 @@
 package main
 
 import (
+	"context"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -68,7 +69,7 @@ func (k *clerk) inForce(dir string) (*model.Edition, error) {
 		return nil, err
 	}
 	defer s.Branch().Close()
-	released, err := s.Editions(k.ctx)
+	released, err := s.Editions(context.Background())
 	if err != nil {
 		return nil, err
 	}
@@ -89,7 +90,7 @@ func (k *clerk) inForce(dir string) (*model.Edition, error) {
 	if client == "" {
 		client = model.NewClients
 	}
-	return s.InForce(k.ctx, product, client, on)
+	return s.InForce(context.Background(), product, client, on)
 }
 
 // signIn opens a branch. Only the practice branch signs its person in by
@@ -100,7 +101,7 @@ func (k *clerk) signIn(dir string) (*store.Session, error) {
 	if _, err := os.Stat(filepath.Join(dir, store.FileName)); err != nil {
 		return nil, problem("clerk_no_branch", "folder", dir)
 	}
-	return practice.Open(k.ctx, dir)
+	return practice.Open(context.Background(), dir)
 }
 
 // day is the day that -on gives, today without it.

@@ -10,14 +10,11 @@
 package main
 
 import (
-	"context"
 	"errors"
 	"fmt"
 	"io"
 	"os"
-	"os/signal"
 	"strings"
-	"syscall"
 	"time"
 
 	"weighhouse/app/words"
@@ -26,14 +23,11 @@ import (
 )
 
 func main() {
-	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
-	defer stop()
-	os.Exit(run(ctx, os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
+	os.Exit(run(os.Args[1:], os.Stdin, os.Stdout, os.Stderr))
 }
 
 // A clerk is one run of the program.
 type clerk struct {
-	ctx    context.Context
 	in     io.Reader
 	out    io.Writer
 	err    io.Writer
@@ -46,8 +40,8 @@ type clerk struct {
 // errRefused ends a run whose problems were told already.
 var errRefused = errors.New("refused")
 
-func run(ctx context.Context, args []string, in io.Reader, out, err io.Writer) int {
-	k := &clerk{ctx: ctx, in: in, out: out, err: err, words: words.New(words.StyleOf("en")), today: model.DateOf(time.Now())}
+func run(args []string, in io.Reader, out, err io.Writer) int {
+	k := &clerk{in: in, out: out, err: err, words: words.New(words.StyleOf("en")), today: model.DateOf(time.Now())}
 	switch problem := k.run(args).(type) {
 	case nil:
 		return 0

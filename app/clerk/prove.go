@@ -1,6 +1,7 @@
 package main
 
 import (
+	"context"
 	"fmt"
 )
 
@@ -12,7 +13,7 @@ func (k *clerk) prove() error {
 	}
 	defer s.Branch().Close()
 	bar := k.progress()
-	proof, err := s.Prove(k.ctx, func(done, total int64) {
+	proof, err := s.Prove(context.Background(), func(done, total int64) {
 		bar.tell("clerk.progress_prove", "n", int(done), "all", int(total))
 	})
 	bar.end()

@@ -7,8 +7,10 @@ import (
 	"fmt"
 	"io"
 	"os"
+	"os/signal"
 	"runtime"
 	"strings"
+	"syscall"
 
 	"weighhouse/app/words"
 	"weighhouse/model"
@@ -57,9 +59,15 @@ func (k *clerk) score() error {
 	if err != nil {
 		return err
 	}
-	s := &scorer{edition: edition, columns: columns, words: k.words, rules: edition.Rules(), on: on, today: k.today}
+	client := model.ClientKind(k.option["client"])
+	if client == "" {
+		client = model.NewClients
+	}
+	s := &scorer{edition: edition, columns: columns, words: k.words, rules: edition.Rules(), on: on, client: client, today: k.today}
 	bar := k.progress()
-	scored, refused, err := s.all(k.ctx, rows, out, func(n int) { bar.tell("clerk.progress_score", "n", n) })
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM) // to take away what is half written
+	defer stop()
+	scored, refused, err := s.all(ctx, rows, out, func(n int) { bar.tell("clerk.progress_score", "n", n) })
 	bar.end()
 	if err = out.finish(err); err != nil {
 		return err
@@ -81,6 +89,7 @@ type scorer struct {
 	words     *words.Reader
 	rules     []model.PolicyRule
 	on, today model.Date
+	client    model.ClientKind
 }
 
 // A batch is some rows on their way from the reader through a worker to the
@@ -175,7 +184,7 @@ func (s *scorer) batch(b *batch) {
 
 // row is a row of the table of results, and whether there is a result.
 func (s *scorer) row(row table.Row) (cells []string, scored bool) {
-	a := s.columns.Applicant(row, s.on)
+	a := s.columns.Applicant(row, s.on, s.client)
 	cells = make([]string, len(resultHeader))
 	cells[0] = a.Ref
 	if !a.Refused() {

@@ -30,8 +30,9 @@ func (a *Applicant) Refused() bool {
 }
 
 // Applicant reads a row. Where it does not say itself, on is the day of the
-// application.
-func (c *Columns) Applicant(row Row, on model.Date) Applicant {
+// application and client the kind of client; an edition for one kind has none
+// but those.
+func (c *Columns) Applicant(row Row, on model.Date, client model.ClientKind) Applicant {
 	a := Applicant{Ref: cell(row.Cells, c.ref)}
 	if len(row.Problems) > 0 {
 		a.Problems = row.Problems
@@ -46,7 +47,7 @@ func (c *Columns) Applicant(row Row, on model.Date) Applicant {
 	}
 	on, err := c.day(cell(row.Cells, c.on), on)
 	add("on", err)
-	client, err := c.kind(strings.ToLower(cell(row.Cells, c.client)))
+	client, err = c.kind(strings.ToLower(cell(row.Cells, c.client)), client)
 	add("client", err)
 	if product := cell(row.Cells, c.product); product != "" && product != c.edition.Scorecard().Card.ProductCode {
 		add("product", problem("file_other_product", "value", product, "expected", c.edition.Scorecard().Card.ProductCode))
@@ -107,19 +108,19 @@ func (c *Columns) day(text string, otherwise model.Date) (model.Date, error) {
 	return d, nil
 }
 
-// kind is the kind of client; new where neither row nor edition says.
-func (c *Columns) kind(text string) (model.ClientKind, error) {
+// kind is the kind of client.
+func (c *Columns) kind(text string, otherwise model.ClientKind) (model.ClientKind, error) {
 	of := c.edition.Scorecard().Card.For
-	if of == model.AllClients {
-		of = model.NewClients
+	if of != model.AllClients {
+		otherwise = of
 	}
 	switch client := model.ClientKind(text); {
-	case client == "", client == of:
-		return of, nil
+	case client == "":
+		return otherwise, nil
 	case client != model.NewClients && client != model.RepeatClients:
-		return of, problem("not_in_list", "value", text, "options", "new, repeat")
-	case c.edition.Scorecard().Card.For != model.AllClients:
-		return of, problem("file_other_clients", "value", text)
+		return otherwise, problem("not_in_list", "value", text, "options", "new, repeat")
+	case of != model.AllClients && client != of:
+		return otherwise, problem("file_other_clients", "value", text)
 	default:
 		return client, nil
 	}
@@ -153,6 +154,9 @@ func (c *Columns) answer(q *question, cells []string) (a model.Answer, column st
 	default:
 		a.State = model.Given
 		a.Number, err = number(text, int(q.item.Decimals))
+		if err == nil && a.Number < 0 && q.item.Kind == model.Numeric && q.item.LowestAccepted.Or(0) >= 0 {
+			err = problem("number_negative", "value", text)
+		}
 	}
 	if err != nil {
 		a = model.Answer{}
@@ -168,8 +172,8 @@ func (c *Columns) lines(q *question, cells []string) (lines []model.Money, colum
 			continue
 		}
 		n, err := number(text, c.money)
-		if err == nil && n < 0 {
-			err = problem("file_line_negative", "value", text)
+		if err == nil && n < 0 { // the line itself says whether it takes away
+			err = problem("number_negative", "value", text)
 		}
 		if err != nil {
 			return nil, c.names[columns.amount], err

@@ -21,7 +21,7 @@ func applicants(t testing.TB, e *model.Edition, in string) (warnings string, lis
 		return codes(problems), nil
 	}
 	for _, row := range rows {
-		list = append(list, columns.Applicant(row, today))
+		list = append(list, columns.Applicant(row, today, model.NewClients))
 	}
 	return codes(problems), list
 }
@@ -102,7 +102,7 @@ func TestApplicantProblems(t *testing.T) {
 		{"seen", "home hous", "seen:unknown_characteristic"},
 		{"product", "farm", "product:file_other_product"},
 		{"household.sales", "5", "household:file_worksheet_twice"},
-		{"late_days", "-5", "late_days:outside_accepted"},
+		{"late_days", "-5", "late_days:number_negative"},
 		{"late_days", "4000", "late_days:outside_accepted"},
 		{"amount", "1010", "amount:amount_not_in_steps"},
 		{"amount", "50", "amount:outside_product"},
@@ -172,7 +172,7 @@ func TestForeignNumbers(t *testing.T) {
 		}
 	}
 	_, list := applicants(t, e, with("household", "", "household.rent", "-5"))
-	if got := codes(list[0].Problems); got != "household.rent:file_line_negative" {
+	if got := codes(list[0].Problems); got != "household.rent:number_negative" {
 		t.Error(got)
 	}
 }
@@ -269,7 +269,7 @@ func TestRowsReadBack(t *testing.T) {
 		if problems != nil {
 			t.Fatal(problems)
 		}
-		got := columns.Applicant(Row{Number: 1, Cells: row}, today)
+		got := columns.Applicant(Row{Number: 1, Cells: row}, today, model.NewClients)
 		if got.Refused() || got.Answers.Text() != a.Text() {
 			t.Fatalf("%v\n%s\n%s", got.Problems, got.Answers.Text(), a.Text())
 		}
@@ -320,7 +320,7 @@ func BenchmarkApplicant(b *testing.B) {
 	columns, _ := ColumnsOf(e, []string{"ref", "amount", "term", "home", "has_stall", "stall_years", "opened", "late_days", "household"})
 	row := Row{Number: 1, Cells: []string{"A-1", "1000", "12", "own", "yes", "7.5", "2019-05-01", "0", "612.3"}}
 	for b.Loop() {
-		if a := columns.Applicant(row, today); a.Refused() {
+		if a := columns.Applicant(row, today, model.NewClients); a.Refused() {
 			b.Fatal(a.Problems)
 		}
 	}

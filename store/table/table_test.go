@@ -219,7 +219,7 @@ func TestWorkbook(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		a := columns.Applicant(row, today)
+		a := columns.Applicant(row, today, model.NewClients)
 		if got := codes(a.Problems); got != want.problems || row.Number != want.row {
 			t.Errorf("row %d: %s, want row %d: %s", row.Number, got, want.row, want.problems)
 		}

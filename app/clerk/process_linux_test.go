@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"io"
+	"os"
 	"os/exec"
 	"strings"
 	"testing"
@@ -54,5 +55,32 @@ func TestMemoryDoesNotGrow(t *testing.T) {
 	t.Logf("%d kB for ten thousand rows, %d kB for two hundred thousand", few, many)
 	if many > few+8<<10 {
 		t.Errorf("%d kB for ten thousand rows, %d kB for two hundred thousand", few, many)
+	}
+}
+
+// An interruption leaves no results and nothing half written.
+func TestInterrupted(t *testing.T) {
+	dir := desk(t)
+	c := exec.Command(program, "score", "-card", "card.xlsx", "-in", "-", "-out", "out.csv")
+	c.Dir = dir
+	var told strings.Builder
+	c.Stderr = &told
+	in, err := c.StdinPipe()
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := c.Start(); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := io.WriteString(in, "amount\n"+strings.Repeat("1000\n", 100_000)); err != nil {
+		t.Fatal(err)
+	}
+	if err := c.Process.Signal(os.Interrupt); err != nil {
+		t.Fatal(err)
+	}
+	c.Wait()
+	files, err := os.ReadDir(dir)
+	if c.ProcessState.ExitCode() != 1 || !strings.Contains(told.String(), "Interrupted") || err != nil || len(files) != 1 {
+		t.Error(c.ProcessState, told.String(), files, err)
 	}
 }
