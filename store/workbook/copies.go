@@ -16,8 +16,8 @@ import (
 
 // Annotate writes a copy of the workbook that was read, with each problem as a
 // comment on its cell (the first 1,000 of them) and all of them on a sheet of
-// their own, in the words of say. A comment that a cell had already is kept. The error is w's own, or a
-// Problem where the file cannot be copied.
+// their own, in the words of say. A comment that a cell had already is kept.
+// The error is w's own, or a Problem where the file cannot be copied.
 func (rd *Reading) Annotate(w io.Writer, say func(model.Problem) string) error {
 	return rd.copy(w, func(f *excelize.File) error {
 		if err := rd.listProblems(f, say); err != nil {

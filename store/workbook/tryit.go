@@ -57,7 +57,7 @@ func resultRef(row int) string { return fmt.Sprintf("$%s$%d", columnName(tryResu
 func (b *builder) tryIt(s model.Scorecard, e *model.Edition) {
 	_, err := b.f.NewSheet(tryItSheet)
 	b.do(err)
-	t := &trial{builder: b, s: s, e: e, lastRow: max(spareRows, len(s.Attributes)+100)}
+	t := &trySheet{builder: b, s: s, e: e, lastRow: max(spareRows, len(s.Attributes)+100)}
 	for i, name := range []string{"No.", "Code", "Question", "Answer", "Value", "Counted as", "Row of Attributes", "Attribute", "Log-odds", "", "Result", "Value"} {
 		if name != "" {
 			b.text(tryItSheet, i+1, 1, name, b.header)
@@ -76,8 +76,8 @@ func (b *builder) tryIt(s model.Scorecard, e *model.Edition) {
 // questionWidth is in characters.
 const questionWidth = 48.0
 
-// trial is the sheet in the making.
-type trial struct {
+// trySheet is the sheet in the making.
+type trySheet struct {
 	*builder
 	s       model.Scorecard
 	e       *model.Edition
@@ -85,38 +85,38 @@ type trial struct {
 }
 
 // row is the sheet's row of an item.
-func (t *trial) row(item *model.Item) int { return item.Index + 2 }
+func (t *trySheet) row(item *model.Item) int { return item.Index + 2 }
 
 // value is the cell with the value of a characteristic.
-func (t *trial) value(code string) string {
+func (t *trySheet) value(code string) string {
 	item, _ := t.e.Item(code)
 	return refOf(tryValue, t.row(item))
 }
 
 // formula writes a formula.
-func (t *trial) formula(col, row int, format string, args ...any) {
+func (t *trySheet) formula(col, row int, format string, args ...any) {
 	t.do(t.f.SetCellFormula(tryItSheet, refOf(col, row), fmt.Sprintf(format, args...)))
 }
 
 // span is a column of another sheet by its header, from a row on.
-func (t *trial) span(sheet, header string, from int) string {
+func (t *trySheet) span(sheet, header string, from int) string {
 	form, _ := formOf(sheet)
 	letter := columnName(1 + slices.IndexFunc(form.Columns, func(c model.Column) bool { return c.Name == header }))
 	return fmt.Sprintf("%s!$%s$%d:$%s$%d", sheet, letter, from, letter, t.lastRow)
 }
 
 // fact is an item of Card or Terms.
-func (t *trial) fact(sheet, item string) string {
+func (t *trySheet) fact(sheet, item string) string {
 	return fmt.Sprintf(`INDEX(%s!$B$2:$B$99,MATCH("%s",%s!$A$2:$A$99,0))`, sheet, item, sheet)
 }
 
 // of is a column of Characteristics for the item of a row.
-func (t *trial) of(header string, row int) string {
+func (t *trySheet) of(header string, row int) string {
 	return fmt.Sprintf("INDEX(%s,MATCH($B%d,%s,0))", t.span("Characteristics", header, 2), row, t.span("Characteristics", "Characteristic", 2))
 }
 
 // item writes one row.
-func (t *trial) item(item *model.Item) {
+func (t *trySheet) item(item *model.Item) {
 	r := t.row(item)
 	if item.Number > 0 {
 		t.do(t.f.SetCellInt(tryItSheet, refOf(tryNumber, r), int64(item.Number)))
@@ -158,7 +158,7 @@ func (t *trial) item(item *model.Item) {
 
 // answer writes the cell for an answer, filled as in the first check, and the
 // value it comes to.
-func (t *trial) answer(item *model.Item, r int) {
+func (t *trySheet) answer(item *model.Item, r int) {
 	ref := refOf(tryAnswer, r)
 	style := t.open[generalFormat]
 	switch item.Kind {
@@ -205,7 +205,7 @@ func (t *trial) answer(item *model.Item, r int) {
 
 // first is an item's answer in the first check; of a worksheet the monthly
 // figure.
-func (t *trial) first(item *model.Item) string {
+func (t *trySheet) first(item *model.Item) string {
 	if len(t.s.Checks) == 0 {
 		return ""
 	}
@@ -239,7 +239,7 @@ func condition(text string) (source string, codes []string, not bool) {
 
 // computed writes the value of a computed item: unknown where a part is, then
 // nothing_left, then not_applicable, else the number.
-func (t *trial) computed(item *model.Item, r int) {
+func (t *trySheet) computed(item *model.Item, r int) {
 	i := slices.IndexFunc(t.s.Computed, func(f model.Formula) bool { return f.Characteristic == item.Code })
 	var parts, signs []string
 	for _, p := range t.s.Computed[i].Parts {
@@ -299,7 +299,7 @@ func wholeYears(on, born string) string {
 }
 
 // results writes what the answers come to, and the payment if one is needed.
-func (t *trial) results() {
+func (t *trySheet) results() {
 	last := len(t.e.Items()) + 1
 	line := func(row int, name, format string, args ...any) {
 		t.text(tryItSheet, tryItem, row, name, t.name)
@@ -338,7 +338,7 @@ func (t *trial) results() {
 
 // payment writes the ordinary payment step by step, as package loan explains
 // it.
-func (t *trial) payment(line func(row int, name, format string, args ...any)) {
+func (t *trySheet) payment(line func(row int, name, format string, args ...any)) {
 	amount, term := t.value(model.Amount), t.value(model.Term)
 	terms := func(item string) string { return t.fact("Terms", item) }
 	rate, n, decimals := resultRef(tryRate), resultRef(tryPeriods), terms("Money decimals")
