@@ -11,10 +11,7 @@ import (
 // of which is sloped too, and the payment as a share of what is left; with six
 // rules. Its checks are left out.
 func twelve(t testing.TB) *Edition {
-	var s Scorecard
-	s.Card = scorecardOf(t, sample).Card
-	s.Terms = scorecardOf(t, sample).Terms
-	s.Bands = scorecardOf(t, sample).Bands
+	s := partOf("Bands\nBand | Label | PD from | PD below | Recommendation\na | Low | | 0.1 | approve\nb | Middle | 0.1 | 0.2 | refer\nc | High | 0.2 | | decline")
 	add := func(code string, kind Kind, use Use) {
 		s.Characteristics = append(s.Characteristics, Characteristic{Code: code, Question: "Asked", Kind: kind, Use: use, Decimals: 2,
 			CountedFrom: Some(Number(0)), CountedTo: Some(Whole(100)), LowestAccepted: Some(Number(0)), HighestAccepted: Some(Whole(100)), AverageLogOdds: Some(LogOdds(0))})

@@ -30,7 +30,7 @@ func (c *compiler) covariance() {
 			bad(i+1, name, "repeated_code", Args{"value": name})
 		case name != Base && !known:
 			bad(i+1, name, "unknown_coefficient", Args{"value": name})
-		case se > 0 && math.Abs(math.Sqrt(math.Max(variance, 0))-se) > 1e-6*se+1e-15:
+		case se > 0 && math.Abs(math.Sqrt(math.Max(variance, 0))-se) > float64(1e-6*se)+1e-15:
 			bad(i+1, name, "covariance_not_standard_error", Args{"value": v.Values[i][i].String(), "expected": Covar(se * se).String()})
 		}
 		seen[name] = true

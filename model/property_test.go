@@ -187,7 +187,7 @@ func TestStepsAddUp(t *testing.T) {
 
 // Every offer is approved within its cap, none is above what was asked, and no
 // larger step of its term would have done.
-func TestTermsThatFit(t *testing.T) {
+func TestTermsThatFitAll(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		e := drawEdition(t)
 		a := drawAnswers(t, e)

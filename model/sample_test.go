@@ -247,3 +247,15 @@ func sampleAnswers(t testing.TB, e *Edition) *Answers {
 	return answered(t, e, "amount 1000", "term 12", "trade stall", "own_stall yes", "seasons spring", "years 5", "born 1980-05-06",
 		"household sales:100/week wages:50/month rent:80/month school:240/year!", "debts 20", "guarantor no", "sex woman")
 }
+
+// partOf reads tables that lack sheets; its card and its terms are sample's.
+func partOf(text string) Scorecard {
+	sheets := sheetsOf(text)
+	for _, sheet := range sheetsOf(sample) {
+		if sheet.Name == "Card" || sheet.Name == "Terms" {
+			sheets = append(sheets, sheet)
+		}
+	}
+	s, _ := FromSheets(sheets)
+	return s
+}
