@@ -24,9 +24,9 @@ func main() {
 		flag.Usage()
 		os.Exit(2)
 	}
-	// A machine whose graphics cannot draw would leave an invisible process.
+	// Graphics that hang would leave a process that nobody sees.
 	watch := time.AfterFunc(10*time.Second, func() {
-		fmt.Fprintln(os.Stderr, "weighhouse: the window could not be drawn: this machine's graphics lack OpenGL 2.1")
+		fmt.Fprintln(os.Stderr, "weighhouse:", desk.NotDrawn(options))
 		os.Exit(1)
 	})
 	if err := desk.Run(app.NewWithID("weighhouse.desk"), options, func() { watch.Stop() }); err != nil {

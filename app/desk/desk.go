@@ -3,11 +3,13 @@
 package desk
 
 import (
+	"cmp"
 	"context"
 	"os"
 	"path/filepath"
 	"strconv"
 	"sync"
+	"sync/atomic"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -55,35 +57,42 @@ type page interface {
 	key(name fyne.KeyName) bool
 }
 
-// Run opens the window and returns when it is closed. shown is called once
-// something has been painted.
-func Run(a fyne.App, o Options, shown func()) error {
+// Run opens the window and returns when it is closed. painted is called once
+// something has been painted; the branch is opened meanwhile.
+func Run(a fyne.App, o Options, painted func()) error {
 	d := &Desk{app: a, post: fyne.Do}
 	a.Settings().SetTheme(look{})
-	d.window = a.NewWindow("Weighhouse")
-	d.window.Resize(smallest)
-	d.window.CenterOnScreen()
-	d.window.SetContent(container.NewWithoutLayout())
+	var session *store.Session
 	var failed error
-	a.Lifecycle().SetOnStarted(func() {
-		shown()
+	opened, seen := make(chan struct{}), make(chan struct{})
+	go func() {
+		defer close(opened)
+		session, failed = open(o)
+	}()
+	err := d.appear(o, func() { painted(); close(seen) })
+	if err == nil {
+		var closed atomic.Bool
+		d.window.SetOnClosed(func() { closed.Store(true) })
 		go func() {
-			session, err := open(o)
+			<-seen
+			<-opened
 			d.post(func() {
-				if err != nil {
-					failed = err
-					d.refuse(o, err)
-					return
+				switch {
+				case closed.Load():
+				case failed != nil:
+					d.refuse(o, failed)
+				default:
+					d.begin(session, o)
 				}
-				d.begin(session, o)
 			})
 		}()
-	})
-	d.window.ShowAndRun()
-	if d.session != nil {
-		return d.session.Branch().Close()
+		a.Run()
 	}
-	return failed
+	<-opened
+	if session != nil {
+		failed = session.Branch().Close()
+	}
+	return cmp.Or(err, failed)
 }
 
 // open opens the branch and signs in.

@@ -9,6 +9,7 @@ import (
 	"flag"
 	"fmt"
 	"image/png"
+	"net"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -35,15 +36,14 @@ type screen struct {
 	program *exec.Cmd
 }
 
-// open starts the program at a size of the screen and waits until it has
-// drawn a page.
-func open(t *testing.T, size string, arguments ...string) *screen {
+// bare starts a virtual display of a size, with nothing on it.
+func bare(t *testing.T, size string, options ...string) *screen {
 	t.Helper()
 	read, write, err := os.Pipe()
 	if err != nil {
 		t.Fatal(err)
 	}
-	server := exec.Command("Xvfb", "-displayfd", "3", "-screen", "0", size+"x24")
+	server := exec.Command("Xvfb", append([]string{"-displayfd", "3", "-screen", "0", size + "x24"}, options...)...)
 	server.ExtraFiles = []*os.File{write}
 	start(t, server)
 	write.Close()
@@ -52,7 +52,14 @@ func open(t *testing.T, size string, arguments ...string) *screen {
 	if err != nil {
 		t.Fatalf("Xvfb gave no display: %v", err)
 	}
-	s := &screen{t: t, display: ":" + strings.TrimSpace(string(number[:n]))}
+	return &screen{t: t, display: ":" + strings.TrimSpace(string(number[:n]))}
+}
+
+// open starts the program at a size of the screen and waits until it has
+// drawn a page.
+func open(t *testing.T, size string, arguments ...string) *screen {
+	t.Helper()
+	s := bare(t, size)
 	start(t, s.command("openbox"))
 	s.program = s.command(*program, arguments...)
 	s.program.Stderr = os.Stderr
@@ -351,5 +358,42 @@ func TestWindowTwice(t *testing.T) {
 	s.keys("alt+F4")
 	if err := s.program.Wait(); err == nil {
 		t.Error("a second window on one desk must end with an error")
+	}
+}
+
+// A machine that cannot show the window is told so in plain words; no process
+// stays that nobody sees.
+func TestWindowWithoutOpenGL(t *testing.T) {
+	silent, err := net.Listen("tcp", "127.0.0.1:0")
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer silent.Close()
+	plainly, lacking := bare(t, "640x480"), bare(t, "640x480", "-extension", "GLX")
+	for _, c := range []struct{ name, display, set, says string }{
+		{"no display is named", "", "", "no display"},
+		{"no such display", ":987654", "", "no display"},
+		{"a display without OpenGL", lacking.display, "", "OpenGL"},
+		{"OpenGL too old", plainly.display, "MESA_GL_VERSION_OVERRIDE=1.4", "OpenGL"},
+		{"no OpenGL driver", plainly.display, "LIBGL_DRIVERS_PATH=/nonexistent", "OpenGL"},
+		{"a display that never answers", fmt.Sprint("127.0.0.1:", silent.Addr().(*net.TCPAddr).Port-6000), "", "OpenGL"},
+	} {
+		s := &screen{t: t, display: c.display}
+		program := s.command(*program, "-practice", "-folder", filepath.Join(t.TempDir(), "branch"))
+		program.Env = append(program.Env, c.set)
+		var said bytes.Buffer
+		program.Stderr = &said
+		start(t, program)
+		done := make(chan error, 1)
+		go func() { done <- program.Wait() }()
+		select {
+		case <-done:
+		case <-time.After(time.Minute): // its own limit is 10 seconds
+			t.Fatalf("%s: the program goes on, unseen", c.name)
+		}
+		if program.ProcessState.ExitCode() != 1 || !strings.Contains(said.String(), "weighhouse: ") ||
+			!strings.Contains(said.String(), c.says) || strings.Contains(said.String(), "goroutine") {
+			t.Errorf("%s: %v\n%s", c.name, program.ProcessState, said.String())
+		}
 	}
 }
