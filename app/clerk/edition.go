@@ -2,7 +2,6 @@ package main
 
 import (
 	"context"
-	"fmt"
 	"os"
 	"path/filepath"
 	"slices"
@@ -115,30 +114,4 @@ func (k *clerk) day() (model.Date, error) {
 		return d, misuse("clerk_not_a_day", "value", text)
 	}
 	return d, nil
-}
-
-// check looks at a workbook and says what it is, or everything that is wrong.
-func (k *clerk) check() error {
-	reading, err := k.readCard(k.files[0])
-	if err != nil {
-		return err
-	}
-	switch {
-	case k.option["json"] != "":
-		if err := k.checkJSON(reading); err != nil {
-			return err
-		}
-	case reading.Edition == nil:
-		k.list(k.out, k.files[0], reading.Problems)
-	default:
-		card := reading.Scorecard.Card
-		fmt.Fprintln(k.out, card.Title)
-		fmt.Fprintln(k.out, k.words.T("clerk.edition", "edition", card.Edition, "date", card.InForceFrom))
-		fmt.Fprintln(k.out, k.words.T("clerk.telephone_code", "code", reading.Edition.TelephoneCode()))
-		k.list(k.err, k.files[0], reading.Problems)
-	}
-	if reading.Edition == nil {
-		return errRefused
-	}
-	return nil
 }

@@ -40,19 +40,19 @@ type clerk struct {
 // errRefused ends a run whose problems were told already.
 var errRefused = errors.New("refused")
 
-func run(args []string, in io.Reader, out, err io.Writer) int {
-	k := &clerk{in: in, out: out, err: err, words: words.New(words.StyleOf("en")), today: model.DateOf(time.Now())}
-	switch problem := k.run(args).(type) {
+func run(args []string, in io.Reader, out, errs io.Writer) int {
+	k := &clerk{in: in, out: out, err: errs, words: words.New(words.StyleOf("en")), today: model.DateOf(time.Now())}
+	switch err := k.run(args).(type) {
 	case nil:
 		return 0
 	case wrongUse:
-		fmt.Fprintln(err, k.told(model.Problem(problem)))
-		fmt.Fprintln(err, k.words.T("clerk.see_help"))
+		fmt.Fprintln(errs, k.told(model.Problem(err)))
+		fmt.Fprintln(errs, k.words.T("clerk.see_help"))
 		return 2
 	default:
-		if problem != errRefused {
-			for _, p := range store.Problems(problem) {
-				fmt.Fprintln(err, k.told(p))
+		if err != errRefused {
+			for _, p := range store.Problems(err) {
+				fmt.Fprintln(errs, k.told(p))
 			}
 		}
 		return 1

@@ -14,6 +14,7 @@ import (
 type output struct {
 	io.Writer
 	file *os.File    // nil for standard output
+	name string      // as it was given
 	path string      // where the file goes; empty where it is written in place
 	mode fs.FileMode // of the file whose place it takes; 0 where there is none
 }
@@ -24,7 +25,7 @@ func (k *clerk) create(path string, reading ...string) (*output, error) {
 	if path == "-" {
 		return &output{Writer: k.out}, nil
 	}
-	o := &output{path: path}
+	o := &output{name: path, path: path}
 	if old, err := os.Stat(path); err == nil {
 		for _, other := range reading {
 			if info, err := os.Stat(other); err == nil && os.SameFile(info, old) {
@@ -33,7 +34,7 @@ func (k *clerk) create(path string, reading ...string) (*output, error) {
 		}
 		if !old.Mode().IsRegular() { // a pipe or a device has no beside
 			f, err := os.OpenFile(path, os.O_WRONLY, 0)
-			return &output{Writer: f, file: f}, cannot(err)
+			return &output{Writer: f, file: f, name: path}, cannot(err)
 		}
 		o.mode = old.Mode().Perm()
 		// A link goes on pointing where it did.
@@ -43,8 +44,11 @@ func (k *clerk) create(path string, reading ...string) (*output, error) {
 	}
 	beside := filepath.Join(filepath.Dir(o.path), "."+filepath.Base(o.path)+"-"+rand.Text()[:8])
 	f, err := os.OpenFile(beside, os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o666)
+	if err != nil {
+		return nil, o.cannot(err)
+	}
 	o.Writer, o.file = f, f
-	return o, cannot(err)
+	return o, nil
 }
 
 // finish gives the file its name, or takes it away where err is not nil.
@@ -60,7 +64,7 @@ func (o *output) finish(err error) error {
 		err = closing
 	}
 	if o.path == "" {
-		return cannot(err)
+		return o.cannot(err)
 	}
 	if err == nil && o.mode != 0 {
 		err = os.Chmod(temporary, o.mode)
@@ -70,6 +74,17 @@ func (o *output) finish(err error) error {
 	}
 	if err != nil {
 		os.Remove(temporary)
+	}
+	return o.cannot(err)
+}
+
+// cannot names the file as it was given, not the one beside it.
+func (o *output) cannot(err error) error {
+	switch e := err.(type) {
+	case *fs.PathError:
+		e.Path = o.name
+	case *os.LinkError:
+		err = &fs.PathError{Op: e.Op, Path: o.name, Err: e.Err}
 	}
 	return cannot(err)
 }

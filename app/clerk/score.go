@@ -143,7 +143,7 @@ func (s *scorer) all(ctx context.Context, in *table.Reader, out io.Writer, tell 
 	header := csv.NewWriter(out)
 	header.Write(resultHeader)
 	if header.Flush(); header.Error() != nil {
-		return 0, 0, cannot(header.Error())
+		return 0, 0, header.Error()
 	}
 	for {
 		var b *batch
@@ -158,7 +158,7 @@ func (s *scorer) all(ctx context.Context, in *table.Reader, out io.Writer, tell 
 		<-b.done
 		scored, refused = scored+b.scored, refused+b.refused
 		if _, err := out.Write(b.text.Bytes()); err != nil {
-			return scored, refused, cannot(err)
+			return scored, refused, err
 		}
 		tell(scored + refused)
 	}

@@ -9,6 +9,32 @@ import (
 	"weighhouse/store/workbook"
 )
 
+// check looks at a workbook and says what it is, or everything that is wrong.
+func (k *clerk) check() error {
+	reading, err := k.readCard(k.files[0])
+	if err != nil {
+		return err
+	}
+	switch {
+	case k.option["json"] != "":
+		if err := k.checkJSON(reading); err != nil {
+			return err
+		}
+	case reading.Edition == nil:
+		k.list(k.out, k.files[0], reading.Problems)
+	default:
+		card := reading.Scorecard.Card
+		fmt.Fprintln(k.out, card.Title)
+		fmt.Fprintln(k.out, k.words.T("clerk.edition", "edition", card.Edition, "date", card.InForceFrom))
+		fmt.Fprintln(k.out, k.words.T("clerk.telephone_code", "code", reading.Edition.TelephoneCode()))
+		k.list(k.err, k.files[0], reading.Problems)
+	}
+	if reading.Edition == nil {
+		return errRefused
+	}
+	return nil
+}
+
 // list tells problems one a line, Sheet!Cell before each; before what is wrong
 // with the whole file stands its name.
 func (k *clerk) list(to io.Writer, file string, problems []model.Problem) {
