@@ -18,7 +18,7 @@ const (
 // formOf is the form of a sheet of that name. Spreadsheets compare sheet
 // names without regard to case, and so do we.
 func formOf(sheet string) (model.SheetForm, bool) {
-	for _, f := range model.Forms() {
+	for _, f := range append(model.Forms(), sealForm) {
 		if strings.EqualFold(f.Name, strings.TrimSpace(sheet)) {
 			return f, true
 		}

@@ -15,6 +15,8 @@ type Reading struct {
 	Scorecard model.Scorecard
 	// Edition is compiled from Scorecard; nil unless every problem is a warning.
 	Edition *model.Edition
+	// Seal is head office's, found to be this scorecard's; nil without one.
+	Seal *Seal
 	// Problems are everything wrong or worth a question, in the workbook's
 	// order. Places have the cell's address wherever there is one.
 	Problems []model.Problem
@@ -41,6 +43,7 @@ func read(b []byte) *Reading {
 	}
 	tables, problems := rd.book.tables()
 	rd.Problems = append(rd.Problems, problems...)
+	tables = rd.readSeal(tables)
 	sheets := make([]model.Sheet, len(tables))
 	for i, t := range tables {
 		sheets[i] = t.Sheet
@@ -50,6 +53,7 @@ func read(b []byte) *Reading {
 	// What the cells say together can be judged only where no sheet or column
 	// is missing.
 	if !slices.ContainsFunc(rd.Problems, structural) {
+		rd.checkSeal()
 		edition, problems := model.Compile(rd.Scorecard)
 		rd.judge(tables, problems)
 		if !slices.ContainsFunc(rd.Problems, func(p model.Problem) bool { return !p.Warning }) {

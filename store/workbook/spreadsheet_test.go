@@ -31,7 +31,7 @@ func TestMain(m *testing.M) {
 func savedBy(t *testing.T, program string, files [][]byte) [][]byte {
 	t.Helper()
 	if _, err := exec.LookPath(program); err != nil {
-		t.Skipf("%s is not installed", program)
+		t.Fatalf("%s is not installed", program)
 	}
 	dir := t.TempDir()
 	in, out := filepath.Join(dir, "in"), filepath.Join(dir, "out")
