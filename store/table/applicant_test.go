@@ -341,7 +341,7 @@ func BenchmarkRead(b *testing.B) {
 func TestHeaderOf(t *testing.T) {
 	e := stall(t)
 	header := HeaderOf(e)
-	const want = "ref on client amount term home home.seen has_stall stall_years opened late_days household.sales household.wages household.rent household.food"
+	const want = "ref on client amount term home home.seen has_stall stall_years opened late_days household household.sales household.wages household.rent household.food"
 	if got := strings.Join(header, " "); got != want {
 		t.Error(got)
 	}

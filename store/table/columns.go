@@ -124,7 +124,8 @@ func columnLetters(i int) string {
 }
 
 // HeaderOf is a header under which every question of an edition can be
-// answered: a worksheet by its lines, and papers seen where they are wanted.
+// answered: a worksheet by its lines, or in one cell where it may be unknown,
+// and papers seen where they are wanted.
 func HeaderOf(e *model.Edition) []string {
 	header := []string{"ref", "on", "client"}
 	for _, item := range e.Items() {
@@ -132,6 +133,9 @@ func HeaderOf(e *model.Edition) []string {
 		case model.Computed:
 			continue
 		case model.Worksheet:
+			if item.UnknownAllowed {
+				header = append(header, item.Code)
+			}
 			for _, line := range item.Lines {
 				header = append(header, item.Code+"."+line.Code)
 			}
