@@ -2,6 +2,7 @@ package desk
 
 import (
 	"context"
+	"slices"
 
 	"fyne.io/fyne/v2"
 
@@ -18,7 +19,7 @@ func (p *interviewPage) applicantRows() []fyne.CanvasObject {
 	name.putText(p.iv.who)
 	name.on().done = func() { p.kind.box.focus() }
 	name.heard = func(text string) {
-		p.iv.who = text
+		p.iv.name(text)
 		p.strip.show(p.iv)
 	}
 	p.who = newRow("", d.reader.T("desk.who"), d.reader.T("desk.who_help"), name, nil)
@@ -30,17 +31,17 @@ func (p *interviewPage) applicantRows() []fyne.CanvasObject {
 
 	kinds := []model.ClientKind{model.NewClients, model.RepeatClients}
 	kind := newPicker(d.reader, d.key, options(d.reader.Name(kinds[0]), d.reader.Name(kinds[1])))
-	kind.put(optionAnswer(indexOf(kinds, p.iv.answers.Client)))
+	kind.put(optionAnswer(slices.Index(kinds, p.iv.answers.Client)))
 	p.kind = newRow("", d.reader.T("desk.client"), "", kind, nil)
 	kind.on().gained = func() { p.current(p.kind, atClient) }
-	kind.on().done = func() { p.what.box.focus() }
+	kind.on().done = func() { d.goOnFrom(atClient) }
 	kind.on().changed = func(a model.Answer) {
 		if a.State == model.Given {
 			p.change(p.iv.edition.Scorecard().Card.ProductCode, kinds[a.Attribute])
 		}
 	}
 
-	products, _ := d.products(p.iv.today)
+	products, err := d.products(p.iv.today)
 	var labels, codes []string
 	for _, r := range products {
 		label := r.Card.Product
@@ -50,10 +51,13 @@ func (p *interviewPage) applicantRows() []fyne.CanvasObject {
 		labels, codes = append(labels, label), append(codes, r.Card.ProductCode)
 	}
 	what := newPicker(d.reader, d.key, options(labels...))
-	what.put(optionAnswer(indexOf(codes, p.iv.edition.Scorecard().Card.ProductCode)))
+	what.put(optionAnswer(slices.Index(codes, p.iv.edition.Scorecard().Card.ProductCode)))
 	p.what = newRow("", d.reader.T("desk.product"), "", what, nil)
+	if err != nil {
+		what.line().refuse(errorWords(d.reader, err))
+	}
 	what.on().gained = func() { p.current(p.what, atProduct) }
-	what.on().done = func() { p.goOn(-1) }
+	what.on().done = func() { d.goOnFrom(atProduct) }
 	what.on().changed = func(a model.Answer) {
 		if a.State == model.Given {
 			p.change(codes[a.Attribute], p.iv.answers.Client)
@@ -73,36 +77,37 @@ func options(labels ...string) []option {
 
 func optionAnswer(i int) model.Answer { return model.Answer{State: model.Given, Attribute: i} }
 
-func indexOf[T comparable](list []T, one T) int {
-	for i, x := range list {
-		if x == one {
-			return i
-		}
-	}
-	return 0
-}
-
-// change goes over to the edition of another product or kind of client; what
-// was answered is carried over wherever the new edition asks the same.
+// change goes over to the edition of another product or kind of client. Where
+// there is none, the picker goes back to what it was and says why.
 func (p *interviewPage) change(product string, client model.ClientKind) {
 	d := p.desk
 	if product == p.iv.edition.Scorecard().Card.ProductCode && client == p.iv.answers.Client {
 		return
 	}
-	iv, err := d.freshInterview(product, client)
+	e, err := d.session.InForce(context.Background(), product, client, p.iv.today)
 	if err != nil {
-		p.what.box.line().refuse(d.reader.Error(err))
+		d.redraw()
+		p.noEdition = errorWords(d.reader, err)
+		d.note(p.noEdition)
 		return
 	}
-	iv.who = p.iv.who
-	if iv.edition == p.iv.edition {
-		iv.answers = p.iv.answers.Clone()
-		iv.answers.Client = client
-	} else {
-		iv.carry(p.iv)
-	}
-	iv.weighAll()
-	d.interview = iv
-	iv.at = p.iv.at
+	p.putBy()
+	d.interview = p.iv.changed(e, client)
 	d.show("interview")
+}
+
+// goOnFrom goes on from the kind of client or the product, on the page that
+// the choice has led to; it stays where the choice could not be had.
+func (d *Desk) goOnFrom(at int) {
+	p, ok := d.page.(*interviewPage)
+	switch {
+	case !ok:
+	case p.noEdition != "":
+		d.note(p.noEdition)
+		p.noEdition = ""
+	case at == atClient:
+		p.what.box.focus()
+	default:
+		p.goOn(-1)
+	}
 }

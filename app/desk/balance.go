@@ -61,15 +61,15 @@ func (b *balance) show(a *model.Answers) {
 		if !s.Open() {
 			r.answer = answerWords(b.reader, b.labels, item, s, a)
 		}
-		r.words = stepWords(b.reader, r, s)
+		r.words = stepWords(b.reader, r)
 		b.rows = append(b.rows, r)
 	}
 	b.chosen = min(b.chosen, len(b.rows)-1)
 	b.Refresh()
 }
 
-// text is the same in lines of plain words, the heaviest step first said last
-// of all: where the applicant stands.
+// text is the same in lines of plain words: the average, each step in its
+// order, and where the applicant stands.
 func (b *balance) text() []string {
 	lines := []string{b.reader.T("balance.centre", "pd", b.edition.Centre().PD())}
 	for _, r := range b.rows {
@@ -97,12 +97,12 @@ func pdAt(logOdds float64) model.PD {
 
 // stepWords says what one answer adds or takes, as a change of the odds: e to
 // the power of its distance from the average.
-func stepWords(r *words.Reader, row balanceRow, s model.Step) string {
-	question, answer := row.label, row.answer
-	if s.Open() {
+func stepWords(r *words.Reader, row balanceRow) string {
+	question, answer := labelled(r, row.label), row.answer
+	if row.step.Open() {
 		return r.T("balance.open", "question", question)
 	}
-	above := s.Above().Float()
+	above := row.step.Above().Float()
 	times := model.Number(math.Round(math.Exp(math.Abs(above)) * float64(model.One))).Round(2)
 	switch {
 	case times == model.One:
@@ -122,7 +122,7 @@ func answerWords(r *words.Reader, l *words.Labels, item *model.Item, s model.Ste
 	case item.Kind == model.YesNo && s.Attribute >= 0:
 		return r.T("yes_no." + item.Attributes[s.Attribute].Code)
 	case item.Kind != model.Computed && a.At(item.Index).State == model.Given:
-		return r.Number(a.At(item.Index).Number, int(item.Decimals)) + " " + l.Unit(item)
+		return numberWords(r, l, item, a.At(item.Index).Number)
 	}
 	return ""
 }
@@ -169,7 +169,8 @@ func (b *balance) choose(i int) {
 const (
 	balanceHead      = 24 // band labels
 	balanceRowHeight = 21
-	balanceFoot      = 66 // the end mark, the axis, its ticks and the words of the chosen row
+	balanceEnd       = 36 // the end mark, and what the average line is
+	balanceFoot      = 78 // the axis, its ticks and the words of the chosen row
 )
 
 func (b *balance) CreateRenderer() fyne.WidgetRenderer {
@@ -188,7 +189,7 @@ type balanceRenderer struct {
 func (r *balanceRenderer) Objects() []fyne.CanvasObject { return r.objects }
 func (r *balanceRenderer) Destroy()                     {}
 func (r *balanceRenderer) MinSize() fyne.Size {
-	return fyne.NewSize(560, balanceHead+balanceRowHeight*float32(len(r.b.rows))+balanceFoot+34)
+	return fyne.NewSize(560, balanceHead+balanceRowHeight*float32(len(r.b.rows))+balanceEnd+balanceFoot)
 }
 func (r *balanceRenderer) Refresh() {
 	r.Layout(r.b.Size())
@@ -219,17 +220,17 @@ type axis struct {
 }
 
 func (a axis) x(l float64) float32 {
-	l = math.Max(a.lo, math.Min(a.hi, l))
+	l = max(a.lo, min(a.hi, l))
 	return a.left + float32((l-a.lo)/(a.hi-a.lo))*(a.right-a.left)
 }
 
 // axis spans all steps with some room, and at least from a half to a double
 // of the odds.
 func (r *balanceRenderer) axis(size fyne.Size) axis {
-	a := axis{left: float32(math.Min(float64(size.Width)*0.4, 330)), right: size.Width - 8, top: balanceHead,
-		bottom: balanceHead + balanceRowHeight*float32(len(r.b.rows)) + 22, lo: r.b.centre - 0.7, hi: r.b.centre + 0.7}
+	a := axis{left: min(size.Width*0.4, 330), right: size.Width - 8, top: balanceHead,
+		bottom: balanceHead + balanceRowHeight*float32(len(r.b.rows)) + balanceEnd, lo: r.b.centre - 0.7, hi: r.b.centre + 0.7}
 	for _, row := range r.b.rows {
-		a.lo, a.hi = math.Min(a.lo, row.toLo), math.Max(a.hi, row.toHi)
+		a.lo, a.hi = min(a.lo, row.toLo), max(a.hi, row.toHi)
 	}
 	room := (a.hi - a.lo) * 0.06
 	a.lo, a.hi = a.lo-room, a.hi+room
@@ -312,7 +313,7 @@ func (r *balanceRenderer) ticks(a axis) {
 	r.print(r.b.reader.T("balance.sides"), 4, 3, a.left-14, 0, colorQuiet, fyne.TextStyle{})
 	x := a.x(r.b.centre)
 	r.line(x, a.top-2, x, a.bottom, 1, colorQuiet)
-	r.print(r.b.reader.T("balance.average"), x+4, a.bottom-17, a.right-x-4, 0, colorQuiet, fyne.TextStyle{})
+	r.print(r.b.reader.T("balance.average"), x+4, a.bottom-16, a.right-x-4, 0, colorQuiet, fyne.TextStyle{})
 }
 
 func (r *balanceRenderer) row(a axis, i int) {
@@ -341,9 +342,9 @@ func (r *balanceRenderer) row(a axis, i int) {
 		bar.FillColor = shade(colorRaised)
 		bar.StrokeColor, bar.StrokeWidth = shade(colorStep), 1.5
 	}
-	r.add(bar, min(from, to), y+5, max(absd(to-from), 1.5), 11)
+	r.add(bar, min(from, to), y+5, max(max(from, to)-min(from, to), 1.5), 11)
 	// An arrow tells the direction where the bar is too short to.
-	if d := to - from; absd(d) > 3 {
+	if d := to - from; d > 3 || d < -3 {
 		tip, back := to+4, to-1
 		if d < 0 {
 			tip, back = to-4, to+1
@@ -365,14 +366,12 @@ func (r *balanceRenderer) answer(a axis, row balanceRow, left, right, y float32)
 	}
 }
 
-func absd(f float32) float32 { return max(f, -f) }
-
 // end marks where the applicant stands.
 func (r *balanceRenderer) end(a axis) {
 	lo, hi := r.b.ends()
-	y := a.bottom - 19
+	y := a.bottom - balanceEnd + 2
 	x, end := a.x(lo), a.x(hi)
-	r.line(a.x((lo+hi)/2), y-2, a.x((lo+hi)/2), a.bottom, 2, theme.ColorNamePrimary)
+	r.line(a.x((lo+hi)/2), y-2, a.x((lo+hi)/2), y+18, 2, theme.ColorNamePrimary)
 	bar := canvas.NewRectangle(shade(theme.ColorNamePrimary))
 	r.add(bar, x-3, y+4, end-x+6, 8)
 	text := r.b.reader.T("balance.here", "pd", pdAt(lo))

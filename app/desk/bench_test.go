@@ -26,7 +26,8 @@ func deskOn(tb testing.TB, folder string) *Desk {
 	}
 	tb.Cleanup(func() { session.Branch().Close() })
 	a := test.NewTempApp(tb)
-	d := &Desk{app: a, post: func(f func()) { f() }, window: test.NewTempWindow(tb, nil)}
+	posts := &posted{}
+	d := &Desk{app: a, post: posts.add, window: test.NewTempWindow(tb, nil)}
 	d.begin(session, Options{Language: "en"})
 	d.window.SetPadded(false)
 	d.window.Resize(fyne.NewSize(1366, 768))
@@ -41,7 +42,8 @@ func deskOn(tb testing.TB, folder string) *Desk {
 		tb.Fatal("the application is not whole")
 	}
 	d.leave()
-	d.saving.Wait()
+	<-d.written
+	posts.run()
 	d.show("interview")
 	return d
 }

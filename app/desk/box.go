@@ -22,6 +22,10 @@ type box interface {
 	answer() model.Answer
 	// put shows an answer kept before; it counts as confirmed.
 	put(model.Answer)
+	// draft is what is typed and no answer yet; resume goes on from it, with the
+	// line at work or notTyping.
+	draft() draft
+	resume(d draft, line int)
 	// focus takes the keyboard.
 	focus()
 	// line is the note.

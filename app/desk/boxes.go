@@ -15,7 +15,6 @@ func boxFor(r *words.Reader, l *words.Labels, e *model.Edition, item *model.Item
 			unknown = l.Attribute(item, n)
 		}
 	}
-	terms := e.Scorecard().Terms
 	switch item.Kind {
 	case model.YesNo:
 		return newYesNoBox(r, k, optionOf(l, item, model.Yes), optionOf(l, item, model.No), unknown)
@@ -33,18 +32,17 @@ func boxFor(r *words.Reader, l *words.Labels, e *model.Edition, item *model.Item
 	case model.DateKind:
 		return newDateBox(r, k, true, unknown)
 	case model.Worksheet:
-		return newWorksheetBox(r, k, worksheetOf(l, item, terms, unknown))
+		return newWorksheetBox(r, k, worksheetOf(l, item, unknown))
 	}
-	money := item.Code == model.Amount || l.Unit(item) == terms.Currency || item.Unit == terms.Currency
-	unit := l.Unit(item)
+	kind := numberKind{decimals: int(item.Decimals), negative: item.LowestAccepted.Or(0) < 0,
+		unit: l.Unit(item), money: l.IsMoney(item), unknown: unknown}
 	switch {
-	case item.Code == model.Amount:
-		unit = terms.Currency
-	case item.Code == model.Term && unit == "":
-		unit = r.Name(terms.TermUnit)
+	case kind.money:
+		kind.unit = l.Currency()
+	case item.Code == model.Term && kind.unit == "":
+		kind.unit = r.Name(e.Scorecard().Terms.TermUnit)
 	}
-	return newNumberBox(r, k, numberKind{decimals: int(item.Decimals), negative: item.LowestAccepted.Or(0) < 0,
-		unit: unit, money: money, unknown: unknown})
+	return newNumberBox(r, k, kind)
 }
 
 func optionOf(l *words.Labels, item *model.Item, code string) option {
@@ -52,8 +50,8 @@ func optionOf(l *words.Labels, item *model.Item, code string) option {
 	return option{label: l.Attribute(item, n), answer: optionAnswer(n)}
 }
 
-func worksheetOf(l *words.Labels, item *model.Item, terms model.Terms, unknown string) worksheetKind {
-	kind := worksheetKind{decimals: int(terms.MoneyDecimals), currency: terms.Currency, unknown: unknown, monthly: item.Monthly}
+func worksheetOf(l *words.Labels, item *model.Item, unknown string) worksheetKind {
+	kind := worksheetKind{decimals: l.MoneyDecimals(), currency: l.Currency(), unknown: unknown, monthly: item.Monthly}
 	for n, line := range item.Lines {
 		kind.lines = append(kind.lines, worksheetLine{l.Line(item, n), line.Flow, line.Period})
 	}

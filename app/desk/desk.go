@@ -8,7 +8,6 @@ import (
 	"os"
 	"path/filepath"
 	"strconv"
-	"sync"
 	"sync/atomic"
 
 	"fyne.io/fyne/v2"
@@ -41,15 +40,16 @@ type Desk struct {
 	post func(func())
 
 	page      page
-	name      string         // of the page, to open it anew
-	saving    sync.WaitGroup // results being written
-	interview *interview     // the application at hand; nil before the first
+	interview *interview    // the application at hand; nil before the first
+	written   chan struct{} // closed once all acts begun are written; nil before the first
+	closing   bool          // the window was told to close and stayed
 	shell     *fyne.Container
 }
 
 // A page fills the window between the banner and the keys.
 type page interface {
-	// object is what it draws; it is asked for once each time the page opens.
+	// object is what it draws, made each time the page is opened: also anew,
+	// when the language or the light has changed.
 	object() fyne.CanvasObject
 	// opened gives the focus to where the work starts.
 	opened()
@@ -67,7 +67,7 @@ func Run(a fyne.App, o Options, painted func()) error {
 	opened, seen := make(chan struct{}), make(chan struct{})
 	go func() {
 		defer close(opened)
-		session, failed = open(o)
+		session, failed = openBranch(o)
 	}()
 	err := d.appear(o, func() { painted(); close(seen) })
 	if err == nil {
@@ -95,8 +95,8 @@ func Run(a fyne.App, o Options, painted func()) error {
 	return cmp.Or(err, failed)
 }
 
-// open opens the branch and signs in.
-func open(o Options) (*store.Session, error) {
+// openBranch opens the branch and signs in.
+func openBranch(o Options) (*store.Session, error) {
 	dir := o.Folder
 	if dir == "" {
 		base, err := os.UserConfigDir()
@@ -145,7 +145,7 @@ func (d *Desk) remembered(name string) string {
 }
 
 func (d *Desk) remember(name, value string) {
-	go d.session.Branch().Remember(context.Background(), name, value)
+	d.behind(func() { d.session.Branch().Remember(context.Background(), name, value) })
 }
 
 // open shows a page.
@@ -191,12 +191,26 @@ func length(text string, least float32) float32 {
 	return max(float32(n), least)
 }
 
-// close keeps what is complete before the window goes.
+// close keeps what is complete before the window goes. Where something would
+// be lost it stays, and goes when it is told once more.
 func (d *Desk) close() {
-	d.leave()
-	size, branch := d.window.Canvas().Size(), d.session.Branch()
-	branch.Remember(context.Background(), "width", strconv.Itoa(int(size.Width)))
-	branch.Remember(context.Background(), "height", strconv.Itoa(int(size.Height)))
-	d.saving.Wait()
-	d.window.Close()
+	if d.unfinished() {
+		return
+	}
+	if d.interview != nil {
+		d.setAside(d.interview)
+	}
+	size := d.window.Canvas().Size()
+	d.remember("width", strconv.Itoa(int(size.Width)))
+	d.remember("height", strconv.Itoa(int(size.Height)))
+	d.behind(func() {
+		d.post(func() {
+			if iv := d.interview; iv != nil && iv.saveProblem != "" && !d.closing {
+				d.closing = true
+				d.show("interview")
+				return
+			}
+			d.window.Close()
+		})
+	})
 }

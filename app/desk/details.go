@@ -1,6 +1,8 @@
 package desk
 
 import (
+	"strings"
+
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
@@ -30,7 +32,7 @@ func (p *detailsPage) object() fyne.CanvasObject {
 		form.Add(paragraph(text))
 	}
 	card := e.Scorecard().Card
-	add("details.edition", r.T("details.in_force", "title", labels.Title(), "edition", int(card.Edition), "date", card.InForceFrom))
+	add("details.edition", d.editionWords(e))
 	add("details.code", e.TelephoneCode())
 	add("details.default", labels.Text("default_means", card.DefaultMeans))
 	add("details.made", r.Name(card.HowMade)+madeFrom(r, card))
@@ -53,7 +55,7 @@ func (p *detailsPage) object() fyne.CanvasObject {
 		if ground == nil {
 			ground = []string{r.T("details.on_ground")}
 		}
-		add("details.ground", joinLines(ground))
+		add("details.ground", strings.Join(ground, "\n"))
 	}
 	work := container.New(&pairs{})
 	for i, item := range e.Items() {
@@ -76,27 +78,9 @@ func madeFrom(r *words.Reader, card model.Card) string {
 func groundWords(r *words.Reader, l *words.Labels, e *model.Edition, p model.Problem) string {
 	text := r.Sentence(p)
 	if item, ok := e.Item(p.Place.Column); ok {
-		return l.Question(item) + " " + text
+		return labelled(r, l.Question(item)) + " " + text
 	}
 	return text
-}
-
-// workedWords is what a computed item comes to.
-func workedWords(r *words.Reader, l *words.Labels, item *model.Item, w model.Worked) string {
-	switch w.State {
-	case model.Missing:
-		return r.T("worked.open")
-	case model.StatedUnknown:
-		return r.T("box.unknown")
-	case model.IsNotApplicable:
-		return r.T("worked.not_applicable")
-	case model.IsNothingLeft:
-		return r.T("worked.nothing_left")
-	}
-	if w.Low != w.High {
-		return r.T("worked.open")
-	}
-	return r.Number(w.Low, int(item.Decimals)) + " " + l.Unit(item)
 }
 
 // pairs lays out captions and their texts in two columns.

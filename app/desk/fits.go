@@ -23,7 +23,11 @@ func (p *fitsPage) opened() {
 func (p *fitsPage) key(fyne.KeyName) bool { return false }
 
 func (p *fitsPage) object() fyne.CanvasObject {
-	d, iv := p.desk, p.desk.interview
+	d, iv, chosen := p.desk, p.desk.interview, 0
+	if p.list != nil {
+		chosen = p.list.chosen
+	}
+	p.list = nil
 	if iv == nil || !iv.complete || !iv.shows() || d.hidden {
 		return d.nothingYet(iv)
 	}
@@ -33,42 +37,20 @@ func (p *fitsPage) object() fyne.CanvasObject {
 	if len(offers) == 0 {
 		return inset(frame(head, nil, nil, nil, paragraph(r.T("fits.none"))))
 	}
-	terms := e.Scorecard().Terms
+	labels := d.labels(e)
 	p.list = newListing([]listColumn{{r.T("fits.term"), 1.4}, {r.T("fits.amount"), 1.6}, {r.T("fits.payment"), 1.6}, {r.T("kept.pd"), 1}},
 		func(row int) ([]string, model.Recommendation) {
 			o := offers[row]
 			payment := ""
 			if n, ok := e.Payment(o.Amount, o.Term); ok {
-				payment = r.Money(n, int(terms.MoneyDecimals), terms.Currency)
+				payment = moneyWords(r, labels, n)
 			}
-			return []string{r.Term(o.Term, terms.TermUnit), r.Money(o.Amount, int(terms.MoneyDecimals), terms.Currency),
+			return []string{r.Term(o.Term, e.Scorecard().Terms.TermUnit), moneyWords(r, labels, o.Amount),
 				payment, r.Percent(o.Result.PD)}, o.Result.Recommendation
 		})
 	p.list.marked = true
 	p.list.keys = d.key
 	p.list.setCount(len(offers))
+	p.list.choose(chosen)
 	return inset(frame(head, d.caution(), nil, nil, p.list))
-}
-
-// keysPage says what every key does.
-type keysPage struct{ desk *Desk }
-
-func (p *keysPage) opened()               {}
-func (p *keysPage) key(fyne.KeyName) bool { return false }
-
-func (p *keysPage) object() fyne.CanvasObject {
-	r := p.desk.reader
-	form := container.New(&pairs{})
-	add := func(key, text string) {
-		form.Add(caption(key))
-		form.Add(paragraph(text))
-	}
-	for _, k := range []string{"enter", "letters", "question", "arrows", "tab"} {
-		add(r.T("keys."+k), r.T("keys."+k+"_does"))
-	}
-	for _, k := range windowKeys {
-		add(string(k.key), r.T("keys."+k.word+"_does"))
-	}
-	add("Esc", r.T("keys.escape_does"))
-	return inset(frame(heading(r.T("keys.title")), nil, nil, nil, container.NewVScroll(form)))
 }

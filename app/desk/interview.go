@@ -5,7 +5,6 @@ import (
 	"time"
 
 	"weighhouse/model"
-	"weighhouse/store"
 )
 
 // An interview is one applicant at the desk: the answers so far and what the
@@ -25,17 +24,28 @@ type interview struct {
 	// handedIn tells that the officer has ended the interview; an answer that
 	// changes afterwards takes that back.
 	handedIn bool
-	// at is the row that last had the focus, by item; see the page.
-	at int
 
-	kept        store.Kept // the result last kept; its ID is 0 before the first
-	keptText    string     // the answers that it was kept with
+	// Where the officer is on the page: the row that last had the focus, by
+	// item, the line of it, how far the page is scrolled, and what is typed
+	// that is no answer yet, by item.
+	at     int
+	line   int
+	offset float32
+	drafts map[int]draft
+	warned bool // that these answers are not kept
+
+	keptText    string // what was kept last
+	keeping     string // what is being written
 	savedAt     time.Time
 	saveProblem string
+	// seen are the kept results that were not handed in, with what was kept;
+	// only acts behind the window touch it.
+	seen map[int64]string
 }
 
 func newInterview(e *model.Edition, today model.Date, client model.ClientKind) *interview {
-	iv := &interview{edition: e, answers: e.NewAnswers(today, client), today: today, wrong: make([][]model.Problem, len(e.Items())), at: atName}
+	iv := &interview{edition: e, answers: e.NewAnswers(today, client), today: today, wrong: make([][]model.Problem, len(e.Items())),
+		at: atName, drafts: map[int]draft{}, seen: map[int64]string{}}
 	iv.weigh()
 	return iv
 }
@@ -44,8 +54,22 @@ func newInterview(e *model.Edition, today model.Date, client model.ClientKind) *
 func (iv *interview) put(index int, answer model.Answer) {
 	iv.answers.Put(index, answer)
 	iv.wrong[index] = iv.edition.CheckAnswer(iv.answers, index)
-	iv.handedIn = false
+	iv.handedIn, iv.warned = false, false
 	iv.weigh()
+}
+
+// name enters who it is.
+func (iv *interview) name(who string) { iv.who, iv.warned = who, false }
+
+// text is all that is kept of it.
+func (iv *interview) text() string { return iv.answers.Text() + "\n" + iv.who }
+
+// begun tells that something was entered.
+func (iv *interview) begun() bool {
+	if iv.who != "" || len(iv.drafts) > 0 {
+		return true
+	}
+	return slices.ContainsFunc(iv.edition.Items(), func(item model.Item) bool { return iv.answers.At(item.Index).State != model.Missing })
 }
 
 // judge tells what stands against an answer before it counts.
@@ -55,20 +79,20 @@ func (iv *interview) judge(index int, answer model.Answer) []model.Problem {
 	return iv.edition.CheckAnswer(try, index)
 }
 
-// carry takes over what was answered in another edition, wherever this one
-// asks the same and takes the answer.
-func (iv *interview) carry(from *interview) {
-	for i, item := range from.edition.Items() {
-		mine, ok := iv.edition.Item(item.Code)
-		given := from.answers.At(i)
-		if !ok || mine.Kind != item.Kind || item.Kind == model.Computed || given.State == model.Missing {
-			continue
-		}
-		if answer, err := iv.edition.ParseAnswer(mine.Index, from.edition.AnswerText(i, given)); err == nil {
-			answer.Seen = given.Seen
-			iv.answers.Put(mine.Index, answer)
+// changed goes over to another edition or kind of client. What was answered
+// and typed is carried over wherever the new edition asks the same.
+func (iv *interview) changed(e *model.Edition, client model.ClientKind) *interview {
+	n := newInterview(e, iv.today, client)
+	n.who, n.at, n.offset, n.seen = iv.who, iv.at, iv.offset, iv.seen
+	n.answers.Carry(iv.answers)
+	for i, d := range iv.drafts {
+		theirs := iv.edition.Items()[i]
+		if item, ok := e.Item(theirs.Code); ok && item.Kind == theirs.Kind && len(item.Lines) == len(theirs.Lines) {
+			n.drafts[item.Index] = d
 		}
 	}
+	n.weighAll()
+	return n
 }
 
 // weighAll weighs anew after many answers have changed.
@@ -90,10 +114,32 @@ func (iv *interview) weigh() {
 
 // refused tells that an answer cannot stand, such as an amount outside the
 // product.
-func (iv *interview) refused() bool {
-	return slices.ContainsFunc(iv.wrong, func(list []model.Problem) bool {
-		return slices.ContainsFunc(list, func(p model.Problem) bool { return !p.Warning })
+func (iv *interview) refused() bool { return slices.ContainsFunc(iv.wrong, stands) }
+
+// stands tells that a problem stands in the way.
+func stands(list []model.Problem) bool {
+	return slices.ContainsFunc(list, func(p model.Problem) bool { return !p.Warning })
+}
+
+// open is the first question that stands in the way of a result, or -1: one
+// without an answer, or with an answer that cannot stand.
+func (iv *interview) open() int {
+	return slices.IndexFunc(iv.edition.Items(), func(item model.Item) bool {
+		return slices.Contains(iv.bounds.Missing, item.Index) || stands(iv.wrong[item.Index])
 	})
+}
+
+// waitsFor is the key of the words that say why no result is shown.
+func (iv *interview) waitsFor() string {
+	switch {
+	case iv.refused():
+		return "desk.mend_first"
+	case iv.complete:
+		return "desk.hand_in"
+	case iv.edition.Scorecard().Card.ResultShown == model.WhenHandedIn:
+		return "desk.shown_handed_in"
+	}
+	return "desk.shown_later"
 }
 
 // asked counts the questions that are, or may be, asked of this applicant,
@@ -144,8 +190,7 @@ func (iv *interview) fires() []model.PolicyRule {
 	return list
 }
 
-// next is the question to go to after one: the next that is asked and has no
-// answer, else the next that is asked; -1 after the last.
+// next is the next question that is, or may be, asked; -1 after the last.
 func (iv *interview) next(after int) int {
 	for i := after + 1; i < len(iv.edition.Items()); i++ {
 		if iv.edition.Items()[i].Kind != model.Computed && iv.answers.Applies(i) != model.Not {

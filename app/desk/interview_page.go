@@ -28,6 +28,8 @@ type interviewPage struct {
 	strip  *strip
 	scroll *container.Scroll
 	now    *row
+	// noEdition is why a product or a kind of client could not be had.
+	noEdition string
 }
 
 // newInterviewPage goes on with the application at hand, or begins one.
@@ -35,7 +37,7 @@ func newInterviewPage(d *Desk) page {
 	if d.interview == nil {
 		iv, err := d.freshInterview("", model.NewClients)
 		if err != nil {
-			return newMessagePage(d, d.reader.Error(err))
+			return &messagePage{d, err}
 		}
 		d.interview = iv
 	}
@@ -87,10 +89,11 @@ func (d *Desk) products(today model.Date) ([]store.Released, error) {
 
 func (p *interviewPage) object() fyne.CanvasObject {
 	d, e := p.desk, p.iv.edition
+	p.now = nil
 	p.labels = d.labels(e)
 	p.panel = newPanel(d.reader, p.labels, e, d.caution())
 	p.strip = newStrip(d.reader, p.labels)
-	p.strip.hide(d.hidden)
+	p.strip.hidden = d.hidden
 	list := p.applicantRows()
 	section := ""
 	p.rows = make([]*row, len(e.Items()))
@@ -106,6 +109,7 @@ func (p *interviewPage) object() fyne.CanvasObject {
 		p.rows[i] = p.questionRow(item)
 		list = append(list, p.rows[i])
 	}
+	p.resume()
 	p.scroll = container.NewVScroll(newStack(list))
 	var side fyne.CanvasObject = p.panel.object
 	if d.hidden {
@@ -115,10 +119,34 @@ func (p *interviewPage) object() fyne.CanvasObject {
 	return frame(p.strip.object, nil, nil, container.New(&sideWidth{}, side), p.scroll)
 }
 
-// curtain covers what is not for whoever looks over the desk.
-func (d *Desk) curtain() fyne.CanvasObject {
-	text := paragraph(d.reader.T("desk.hidden"))
-	return container.NewStack(canvas.NewRectangle(shade(colorRaised)), text)
+// putBy puts by what is typed and no answer yet, and where the officer is.
+func (p *interviewPage) putBy() {
+	iv := p.iv
+	iv.offset = p.scroll.Offset.Y
+	clear(iv.drafts)
+	for i, r := range p.rows {
+		if r == nil {
+			continue
+		}
+		if d := r.box.draft(); d != nil {
+			iv.drafts[i] = d
+		}
+	}
+	iv.line = 0
+	if w, ok := p.boxAt(iv.at).(*worksheetBox); ok {
+		iv.line = w.lineAtWork()
+	}
+}
+
+// resume shows again what was put by.
+func (p *interviewPage) resume() {
+	for i, d := range p.iv.drafts {
+		line := notTyping
+		if i == p.iv.at {
+			line = p.iv.line
+		}
+		p.rows[i].box.resume(d, line)
+	}
 }
 
 func (p *interviewPage) sectionHead(text string) fyne.CanvasObject {
@@ -169,6 +197,7 @@ func (p *interviewPage) current(r *row, at int) {
 	}
 	if p.now != nil {
 		p.now.setCurrent(false)
+		p.desk.keep(p.iv)
 	}
 	p.now = r
 	r.setCurrent(true)
@@ -183,14 +212,17 @@ func (p *interviewPage) current(r *row, at int) {
 	}
 }
 
-// goOn moves to the next question; after the last it keeps the result.
+// goOn moves to the next question; after the last it says what is left to do.
 func (p *interviewPage) goOn(index int) {
+	r, note := p.desk.reader, p.boxAt(p.iv.at).line()
 	if next := p.iv.next(index); next >= 0 {
 		p.rows[next].box.focus()
+	} else if open := p.iv.open(); open >= 0 {
+		note.ask(r.T("desk.last_open", "number", p.iv.edition.Items()[open].Number))
 	} else {
-		p.now.box.line().hint(p.desk.reader.T("desk.last"))
+		note.hint(r.T("desk.last"))
 	}
-	p.keep()
+	p.desk.keep(p.iv)
 }
 
 // show brings the page up to date after an answer.
@@ -212,18 +244,29 @@ const (
 	atProduct = -3
 )
 
-// opened goes back to the row that last had the focus.
-func (p *interviewPage) opened() {
-	switch at := p.iv.at; at {
+// boxAt is the box of a row.
+func (p *interviewPage) boxAt(at int) box {
+	switch at {
 	case atName:
-		p.who.box.focus()
+		return p.who.box
 	case atClient:
-		p.kind.box.focus()
+		return p.kind.box
 	case atProduct:
-		p.what.box.focus()
-	default:
-		p.rows[at].box.focus()
+		return p.what.box
 	}
+	return p.rows[at].box
+}
+
+// opened goes back to where the officer was.
+func (p *interviewPage) opened() {
+	p.scroll.ScrollToOffset(fyne.NewPos(0, p.iv.offset))
+	switch b := p.boxAt(p.iv.at).(type) {
+	case *worksheetBox:
+		b.focusLine(p.iv.line)
+	default:
+		b.focus()
+	}
+	p.desk.cursorToEnd()
 }
 
 func (p *interviewPage) key(name fyne.KeyName) bool {
@@ -238,7 +281,3 @@ func (p *interviewPage) key(name fyne.KeyName) bool {
 	}
 	return false
 }
-
-// keep writes a complete result that is not kept yet, off the window's
-// thread; "saved" is said when it is on the disk.
-func (p *interviewPage) keep() { p.desk.keep(p.iv, func() { p.strip.show(p.iv) }) }

@@ -44,15 +44,11 @@ func (d *Desk) key(name fyne.KeyName) bool {
 	case fyne.KeyF8:
 		d.nextLanguage()
 	case fyne.KeyF9:
-		d.hidden = !d.hidden
-		d.redraw()
+		d.hide()
 	case fyne.KeyF10:
-		d.finish()
+		d.handIn()
 	case fyne.KeyF11:
-		d.dark = !d.dark
-		d.app.Settings().SetTheme(look{d.dark})
-		d.remember("light", map[bool]string{true: "dark", false: "light"}[d.dark])
-		d.redraw()
+		d.turnLight()
 	case fyne.KeyEscape:
 		d.show("interview")
 	default:

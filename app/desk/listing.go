@@ -111,18 +111,27 @@ func (l *listing) TypedKey(e *fyne.KeyEvent) {
 }
 
 func (l *listing) Tapped(e *fyne.PointEvent) {
-	if c := fyne.CurrentApp().Driver().CanvasForObject(l); c != nil {
-		c.Focus(l)
-	}
-	if row := l.top + int((e.Position.Y-l.head())/listRowHeight); e.Position.Y >= l.head() && row < l.count {
+	focusOn(l)
+	if row := l.rowAt(e.Position); row >= 0 {
 		l.choose(row)
 	}
 }
 
-func (l *listing) DoubleTapped(*fyne.PointEvent) {
-	if l.count > 0 && l.onTake != nil {
-		l.onTake(l.chosen)
+// DoubleTapped comes instead of the tap, not after it.
+func (l *listing) DoubleTapped(e *fyne.PointEvent) {
+	if row := l.rowAt(e.Position); row >= 0 && l.onTake != nil {
+		l.choose(row)
+		l.onTake(row)
 	}
+}
+
+// rowAt is the row at a place, or -1.
+func (l *listing) rowAt(at fyne.Position) int {
+	row := l.top + int((at.Y-l.head())/listRowHeight)
+	if at.Y < l.head() || row >= l.count {
+		return -1
+	}
+	return row
 }
 
 func (l *listing) Scrolled(e *fyne.ScrollEvent) {
@@ -158,6 +167,7 @@ func (r *listingRenderer) Refresh() {
 // Layout fills the rows in sight; texts are made once and used again.
 func (r *listingRenderer) Layout(size fyne.Size) {
 	l := r.l
+	l.top = max(0, min(l.top, l.count-l.page()))
 	r.objects = append(r.objects[:0], r.ground, r.bar)
 	left := float32(6)
 	if l.marked {

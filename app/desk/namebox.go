@@ -39,10 +39,8 @@ func newNameBox(reader *words.Reader, keys keys, most int) *nameBox {
 
 // putText shows a text without telling of it.
 func (b *nameBox) putText(text string) {
-	heard := b.heard
-	b.heard = nil
-	b.entry.SetText(text)
-	b.heard = heard
+	b.note.hint("")
+	b.entry.rewrite(text)
 }
 
 func (b *nameBox) answer() model.Answer { return model.Answer{} }

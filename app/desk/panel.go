@@ -24,24 +24,26 @@ type panel struct {
 	answered *canvas.Text
 	mark     *mark
 	verdict  *canvas.Text
-	firmness *canvas.Text
+	firmness *widget.Label
 	odds     *widget.Label // PD in words, or its bounds
 	figures  *canvas.Text  // PD, score, band
 	decider  *widget.Label
 	payment  *widget.Label
 	rules    *widget.Label
+	problem  *widget.Label // why nothing is saved
 	object   fyne.CanvasObject
 }
 
 func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caution fyne.CanvasObject) *panel {
 	p := &panel{reader: reader, labels: labels, edition: e,
 		answered: figure(theme.TextSize(), false), mark: newMark(44), verdict: figure(theme.TextHeadingSize(), true),
-		firmness: figure(theme.CaptionTextSize(), false), odds: paragraph(""), figures: figure(theme.TextSize(), false),
-		decider: paragraph(""), payment: paragraph(""), rules: paragraph("")}
-	p.rules.Importance = widget.WarningImportance
+		firmness: paragraph(""), odds: paragraph(""), figures: figure(theme.TextSize(), false),
+		decider: paragraph(""), payment: paragraph(""), rules: paragraph(""), problem: paragraph("")}
+	p.firmness.SizeName, p.firmness.Importance = theme.SizeNameCaptionText, widget.LowImportance
+	p.rules.Importance, p.problem.Importance = widget.WarningImportance, widget.DangerImportance
 	top := container.NewBorder(nil, nil, p.mark, nil, container.NewVBox(p.verdict, p.firmness))
 	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.odds, inset(p.figures),
-		widget.NewSeparator(), p.payment, p.decider, p.rules)
+		widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem)
 	ground := canvas.NewRectangle(shade(colorRaised))
 	p.object = container.NewStack(ground, container.NewBorder(nil,
 		container.NewVBox(widget.NewSeparator(), caution), nil, nil, container.NewVScroll(body)))
@@ -62,27 +64,26 @@ func (p *panel) show(iv *interview) {
 	default:
 		setFigure(p.verdict, p.reader.T("desk.open"), colorQuiet)
 	}
-	setFigure(p.firmness, p.firm(iv, settled), colorQuiet)
+	setParagraph(p.firmness, p.firm(iv, settled))
 	setParagraph(p.odds, p.oddsWords(iv))
 	setFigure(p.figures, p.figureWords(iv), theme.ColorNameForeground)
 	setParagraph(p.decider, p.deciderWords(iv))
 	setParagraph(p.payment, p.paymentWords(iv))
 	setParagraph(p.rules, p.ruleWords(iv))
+	setParagraph(p.problem, iv.saveProblem)
 }
 
 // firm tells how firmly the recommendation stands.
 func (p *panel) firm(iv *interview, settled bool) string {
 	switch {
-	case iv.refused():
-		return p.reader.T("desk.mend_first")
-	case iv.complete && !iv.shows():
-		return p.reader.T("desk.hand_in")
+	case iv.refused() || !iv.shows():
+		return p.reader.T(iv.waitsFor())
+	case iv.handedIn:
+		return p.reader.T("desk.handed_in")
 	case iv.complete:
 		return p.reader.T("desk.complete")
 	case settled:
 		return p.reader.T("desk.settled")
-	case !iv.shows():
-		return p.reader.T("desk.shown_later")
 	case iv.bounds.Narrows >= 0:
 		item := &p.edition.Items()[iv.bounds.Narrows]
 		return p.reader.T("desk.narrows", "number", item.Number)
@@ -115,9 +116,8 @@ func (p *panel) deciderWords(iv *interview) string {
 		return ""
 	}
 	text := p.reader.T("desk.decides." + string(p.edition.Decider(iv.result, amount)))
-	if cap := iv.result.LargestAmount; cap.Set && cap.Value < amount {
-		terms := p.edition.Scorecard().Terms
-		text += " " + p.reader.T("desk.largest", "amount", p.reader.Money(cap.Value, int(terms.MoneyDecimals), terms.Currency))
+	if most := iv.result.LargestAmount; most.Set && most.Value < amount {
+		text += " " + p.reader.T("desk.largest", "amount", moneyWords(p.reader, p.labels, most.Value))
 	}
 	if _, caution := p.labels.Band(iv.result.Band); caution != "" {
 		text += "\n" + caution
@@ -132,10 +132,7 @@ func (p *panel) paymentWords(iv *interview) string {
 	if !ok || !iv.worked[payment].Known() || iv.worked[payment].State != model.Given {
 		return ""
 	}
-	terms := p.edition.Scorecard().Terms
-	money := func(i int) string {
-		return p.reader.Money(iv.worked[i].Low, int(terms.MoneyDecimals), terms.Currency)
-	}
+	money := func(i int) string { return moneyWords(p.reader, p.labels, iv.worked[i].Low) }
 	if !iv.worked[left].Known() || iv.worked[left].State != model.Given {
 		return p.reader.T("desk.payment", "payment", money(payment))
 	}
@@ -174,4 +171,18 @@ func capital(text string) string {
 		}
 	}
 	return text
+}
+
+// sideWidth gives what stands beside a page's main part a width of its own: a
+// third of a small window.
+type sideWidth struct{}
+
+const panelWidth = 350
+
+func (sideWidth) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(panelWidth, 100) }
+func (sideWidth) Layout(objects []fyne.CanvasObject, size fyne.Size) {
+	for _, o := range objects {
+		o.Move(fyne.NewPos(0, 0))
+		o.Resize(size)
+	}
 }

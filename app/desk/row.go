@@ -60,7 +60,7 @@ const (
 	questionGap   = 4
 	widest        = 620 // of a box beneath its question
 	questionLines = 2
-	helpLines     = 2
+	helpLines     = 3
 )
 
 func (r *row) CreateRenderer() fyne.WidgetRenderer {

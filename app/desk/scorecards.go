@@ -2,12 +2,16 @@ package desk
 
 import (
 	"context"
+	"errors"
+	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/widget"
 
 	"weighhouse/model"
 	"weighhouse/store/workbook"
@@ -52,8 +56,7 @@ func (p *scorecardsPage) object() fyne.CanvasObject {
 	p.list.onTake = func(row int) { p.take(p.places[row].path) }
 	p.fill()
 	p.start = p.list
-	note := paragraph(p.said)
-	head := container.NewVBox(heading(r.T("scorecards.title")), note, caption(r.T("scorecards.path")),
+	head := container.NewVBox(heading(r.T("scorecards.title")), paragraph(p.said), caption(r.T("scorecards.path")),
 		p.path, p.path.line(), caption(r.T("scorecards.list")))
 	return inset(frame(head, p.writeOut(), nil, container.New(&sideWidth{}, p.released()), p.list))
 }
@@ -61,26 +64,42 @@ func (p *scorecardsPage) object() fyne.CanvasObject {
 // released lists the editions that are in force, or will be.
 func (p *scorecardsPage) released() fyne.CanvasObject {
 	d, r := p.desk, p.desk.reader
-	lines := []string{}
+	var lines []string
 	editions, err := d.session.Editions(context.Background())
 	if err != nil {
-		lines = append(lines, openWords(r, err))
+		lines = append(lines, errorWords(r, err))
 	}
-	for _, e := range editions {
-		lines = append(lines, e.Card.Product+", "+r.Name(e.Card.For),
-			r.T("details.in_force", "title", e.Card.Title, "edition", int(e.Card.Edition), "date", e.Card.InForceFrom),
-			r.T("scorecards.code", "code", e.Fingerprint.TelephoneCode()), "")
+	for _, released := range editions {
+		e, err := d.session.Edition(context.Background(), released.Fingerprint)
+		if err != nil {
+			lines = append(lines, errorWords(r, err), "")
+			continue
+		}
+		lines = append(lines, d.labels(e).Product()+", "+r.Name(e.Scorecard().Card.For), d.editionWords(e),
+			r.T("details.code"), e.TelephoneCode(), "")
 	}
-	return frame(heading(r.T("scorecards.released")), nil, nil, nil, container.NewVScroll(paragraph(joinLines(lines))))
+	return frame(heading(r.T("scorecards.released")), nil, nil, nil, container.NewVScroll(paragraph(strings.Join(lines, "\n"))))
 }
 
-// writeOut offers the edition in force, and a blank workbook, as files.
+// editionWords name an edition.
+func (d *Desk) editionWords(e *model.Edition) string {
+	card := e.Scorecard().Card
+	return d.reader.T("details.in_force", "title", d.labels(e).Title(), "edition", int(card.Edition), "date", card.InForceFrom)
+}
+
+// writeOut offers the edition in force of the product at hand, and a blank
+// workbook, as files.
 func (p *scorecardsPage) writeOut() fyne.CanvasObject {
 	d, r := p.desk, p.desk.reader
 	row := container.NewHBox()
 	if iv := d.interview; iv != nil {
 		row.Add(newPush(r.T("scorecards.write"), d.key, func() {
-			s := *iv.edition.Scorecard()
+			e, err := d.session.InForce(context.Background(), iv.edition.Scorecard().Card.ProductCode, iv.answers.Client, iv.today)
+			if err != nil {
+				p.say(errorWords(r, err))
+				return
+			}
+			s := *e.Scorecard()
 			p.write(workbook.FileName(s.Card), func(f *os.File) error { return workbook.Write(f, s) })
 		}))
 	}
@@ -88,25 +107,32 @@ func (p *scorecardsPage) writeOut() fyne.CanvasObject {
 	return row
 }
 
+// say opens the page anew with the outcome of an act.
+func (p *scorecardsPage) say(outcome string) {
+	p.said = outcome
+	p.desk.open(p)
+}
+
 // write makes a new file in the folder shown; it never writes over one.
 func (p *scorecardsPage) write(name string, do func(*os.File) error) {
 	r := p.desk.reader
 	path := filepath.Join(p.folder, name)
 	f, err := os.OpenFile(path, os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o644)
+	if errors.Is(err, fs.ErrExist) {
+		p.say(r.T("scorecards.exists", "file", path))
+		return
+	}
 	if err == nil {
-		err = do(f)
-		if e := f.Close(); err == nil {
-			err = e
-		}
+		err = errors.Join(do(f), f.Close())
 		if err != nil {
 			os.Remove(path)
 		}
 	}
-	p.said = r.T("scorecards.written", "file", path)
 	if err != nil {
-		p.said = r.T("scorecards.not_written", "reason", err.Error())
+		p.say(r.T("scorecards.not_written", "reason", err.Error()))
+		return
 	}
-	p.desk.open(p)
+	p.say(r.T("scorecards.written", "file", path))
 }
 
 // take goes into a folder, or reads a file.
@@ -127,15 +153,20 @@ func (p *scorecardsPage) take(path string) {
 
 // fill lists what is in the folder shown, and other places to look.
 func (p *scorecardsPage) fill() {
-	p.places = spotsIn(p.folder, p.desk.reader)
+	var err error
+	if p.places, err = spotsIn(p.folder, p.desk.reader); err != nil {
+		p.path.line().refuse(p.desk.reader.T("scorecards.unreadable", "reason", err.Error()))
+	}
 	p.list.setCount(len(p.places))
 	p.list.choose(0)
 }
 
-// read reads a workbook off the window's thread.
+// read reads a workbook off the window's thread. What is read after the
+// officer has gone elsewhere is let go.
 func (p *scorecardsPage) read(path string) {
 	d := p.desk
 	d.remember("folder", filepath.Dir(path))
+	p.say(d.reader.T("scorecards.reading", "file", path))
 	go func() {
 		var reading *workbook.Reading
 		f, err := os.Open(path)
@@ -144,12 +175,14 @@ func (p *scorecardsPage) read(path string) {
 			reading, err = workbook.Read(f)
 		}
 		d.post(func() {
-			if err != nil {
-				p.said = d.reader.T("scorecards.unreadable", "reason", err.Error())
-			} else {
-				p.reading, p.file, p.said = reading, path, ""
+			switch {
+			case d.page != p:
+			case err != nil:
+				p.say(d.reader.T("scorecards.unreadable", "reason", err.Error()))
+			default:
+				p.reading, p.file = reading, path
+				p.say("")
 			}
-			d.open(p)
 		})
 	}()
 }
@@ -158,50 +191,63 @@ func (p *scorecardsPage) read(path string) {
 func (p *scorecardsPage) verdict() fyne.CanvasObject {
 	d, r := p.desk, p.desk.reader
 	problems := p.reading.Problems
-	p.list = newListing([]listColumn{{r.T("scorecards.where"), 1}, {r.T("scorecards.what"), 5}},
-		func(row int) ([]string, model.Recommendation) {
-			problem := problems[row]
-			kind := model.Decline
-			if problem.Warning {
-				kind = model.Refer
-			}
-			return []string{r.Where(problem.Place), r.Sentence(problem)}, kind
-		})
-	p.list.marked = true
-	p.list.keys = d.key
-	full := paragraph("")
-	p.list.onMove = func(row int) { setParagraph(full, r.Problem(problems[row])) }
-	p.list.setCount(len(problems))
-	if len(problems) > 0 {
-		setParagraph(full, r.Problem(problems[0]))
-	}
-	p.start = p.list
-	title, accepted := r.T("scorecards.refused", "n", len(problems)), p.reading.Edition != nil
+	accepted := p.reading.Edition != nil
 	buttons := container.NewHBox()
-	if accepted {
-		title = r.T("scorecards.sound")
-		accept := newPush(r.T("scorecards.accept"), d.key, p.accept)
-		buttons.Add(accept)
-		p.start = accept
+	push := func(label string, does func()) *push {
+		b := newPush(r.T(label), d.key, does)
+		buttons.Add(b)
+		return b
 	}
-	if len(problems) > 0 {
-		buttons.Add(newPush(r.T("scorecards.save_list"), d.key, p.saveList))
-		buttons.Add(newPush(r.T("scorecards.save_copy"), d.key, p.saveCopy))
-	}
-	buttons.Add(newPush(r.T("scorecards.another"), d.key, func() { p.back() }))
-	head := container.NewVBox(heading(title), paragraph(p.file))
+	head := container.NewVBox()
 	if accepted {
-		card := p.reading.Scorecard.Card
-		head.Add(paragraph(joinLines([]string{
-			r.T("details.in_force", "title", card.Title, "edition", int(card.Edition), "date", card.InForceFrom),
-			r.T("scorecards.code", "code", p.reading.Edition.TelephoneCode()),
-			r.T("scorecards.read_code")})))
+		head.Add(heading(r.T("scorecards.sound")))
+		head.Add(paragraph(strings.Join([]string{p.file, d.editionWords(p.reading.Edition),
+			r.T("scorecards.code", "code", p.reading.Edition.TelephoneCode()), r.T("scorecards.read_code")}, "\n")))
+		p.start = push("scorecards.accept", p.accept)
+	} else {
+		head.Add(heading(r.T("scorecards.refused", "n", len(problems))))
+		head.Add(paragraph(p.file))
 	}
 	if p.said != "" {
 		head.Add(paragraph(p.said))
 	}
+	if len(problems) > 0 {
+		push("scorecards.save_list", p.saveList)
+		push("scorecards.save_copy", p.saveCopy)
+	}
+	push("scorecards.another", p.back)
 	head.Add(buttons)
-	return inset(frame(head, full, nil, nil, p.list))
+	if len(problems) == 0 {
+		return inset(frame(head, nil, nil, nil, layout.NewSpacer()))
+	}
+	full := paragraph("")
+	p.list = p.problemList(problems, full)
+	if !accepted {
+		p.start = p.list
+	}
+	// The chosen problem in full has a place of its own, so that the list does
+	// not move.
+	foot := container.New(tall(110), container.NewVScroll(full))
+	return inset(frame(head, foot, nil, nil, p.list))
+}
+
+// problemList lists problems, the chosen one in full elsewhere.
+func (p *scorecardsPage) problemList(problems []model.Problem, full *widget.Label) *listing {
+	r := p.desk.reader
+	list := newListing([]listColumn{{r.T("scorecards.where"), 1}, {r.T("scorecards.what"), 3}},
+		func(row int) ([]string, model.Recommendation) {
+			mark := model.Decline
+			if problems[row].Warning {
+				mark = model.Refer
+			}
+			return []string{r.Where(problems[row].Place), r.Sentence(problems[row])}, mark
+		})
+	list.marked = true
+	list.keys = p.desk.key
+	list.onMove = func(row int) { setParagraph(full, r.Problem(problems[row])) }
+	list.setCount(len(problems))
+	list.onMove(0)
+	return list
 }
 
 func (p *scorecardsPage) opened() {
@@ -222,9 +268,10 @@ func (p *scorecardsPage) key(name fyne.KeyName) bool {
 	return false
 }
 
+// back looks for another workbook.
 func (p *scorecardsPage) back() {
-	p.reading, p.said = nil, ""
-	p.desk.open(p)
+	p.reading = nil
+	p.say("")
 }
 
 // accept takes the workbook as the next edition. Work at hand goes on under
@@ -233,22 +280,19 @@ func (p *scorecardsPage) accept() {
 	d, r := p.desk, p.desk.reader
 	edition, err := d.session.ReleaseEdition(context.Background(), p.reading.Scorecard)
 	if err != nil {
-		p.said = openWords(r, err)
-		d.open(p)
+		p.say(errorWords(r, err))
 		return
 	}
 	card := edition.Scorecard().Card
-	p.reading, p.said = nil, r.T("scorecards.accepted", "title", card.Title, "edition", int(card.Edition), "date", card.InForceFrom)
-	d.open(p)
+	p.reading = nil
+	p.say(r.T("scorecards.accepted", "title", d.labels(edition).Title(), "edition", int(card.Edition), "date", card.InForceFrom))
 }
 
 // saveList writes the problems beside the workbook, a line each.
 func (p *scorecardsPage) saveList() {
 	r := p.desk.reader
-	name := strings.TrimSuffix(filepath.Base(p.file), filepath.Ext(p.file)) + r.T("scorecards.list_name") + ".txt"
-	p.folder = filepath.Dir(p.file)
-	p.write(name, func(f *os.File) error {
-		_, err := f.WriteString(joinLines(problemLines(r, p.reading.Problems)) + "\n")
+	p.writeBeside(r.T("scorecards.list_name")+".txt", func(f *os.File) error {
+		_, err := f.WriteString(problemLines(r, p.reading.Problems) + "\n")
 		return err
 	})
 }
@@ -257,7 +301,21 @@ func (p *scorecardsPage) saveList() {
 // cell.
 func (p *scorecardsPage) saveCopy() {
 	r := p.desk.reader
-	name := strings.TrimSuffix(filepath.Base(p.file), filepath.Ext(p.file)) + r.T("scorecards.copy_name") + ".xlsx"
+	p.writeBeside(r.T("scorecards.copy_name")+".xlsx", func(f *os.File) error { return p.reading.Annotate(f, r.Sentence) })
+}
+
+// writeBeside makes a file beside the workbook, named after it.
+func (p *scorecardsPage) writeBeside(ending string, do func(*os.File) error) {
 	p.folder = filepath.Dir(p.file)
-	p.write(name, func(f *os.File) error { return p.reading.Annotate(f, r.Sentence) })
+	p.write(strings.TrimSuffix(filepath.Base(p.file), filepath.Ext(p.file))+ending, do)
+}
+
+// tall is the height of what is laid out, over the whole width.
+type tall float32
+
+func (t tall) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(100, float32(t)) }
+func (t tall) Layout(objects []fyne.CanvasObject, size fyne.Size) {
+	for _, o := range objects {
+		o.Resize(size)
+	}
 }

@@ -6,6 +6,7 @@ import (
 	"runtime"
 	"slices"
 	"strings"
+	"time"
 
 	"weighhouse/app/words"
 )
@@ -14,15 +15,12 @@ import (
 type spot struct{ label, path string }
 
 // spotsIn lists the workbooks in a folder, newest first, then its folders,
-// the one above, and the sticks and disks that are in the machine.
-func spotsIn(folder string, r *words.Reader) []spot {
+// the one above, and the sticks and disks that are in the machine. The error
+// is the folder's; the places to go on to are listed all the same.
+func spotsIn(folder string, r *words.Reader) ([]spot, error) {
+	entries, err := os.ReadDir(folder)
 	var files, folders []spot
-	entries, _ := os.ReadDir(folder)
-	type dated struct {
-		spot
-		at int64
-	}
-	var found []dated
+	changed := map[string]time.Time{}
 	for _, e := range entries {
 		name := e.Name()
 		path := filepath.Join(folder, name)
@@ -31,17 +29,13 @@ func spotsIn(folder string, r *words.Reader) []spot {
 		case e.IsDir():
 			folders = append(folders, spot{r.T("scorecards.folder", "name", name), path})
 		case strings.EqualFold(filepath.Ext(name), ".xlsx"):
-			at := int64(0)
+			files = append(files, spot{name, path})
 			if info, err := e.Info(); err == nil {
-				at = info.ModTime().UnixNano()
+				changed[path] = info.ModTime()
 			}
-			found = append(found, dated{spot{name, path}, at})
 		}
 	}
-	slices.SortStableFunc(found, func(a, b dated) int { return int(min(max(b.at-a.at, -1), 1)) })
-	for _, f := range found {
-		files = append(files, f.spot)
-	}
+	slices.SortStableFunc(files, func(a, b spot) int { return changed[b.path].Compare(changed[a.path]) })
 	list := append(files, folders...)
 	if up := filepath.Dir(folder); up != folder {
 		list = append(list, spot{r.T("scorecards.above", "name", up), up})
@@ -49,7 +43,7 @@ func spotsIn(folder string, r *words.Reader) []spot {
 	for _, path := range removable() {
 		list = append(list, spot{r.T("scorecards.stick", "name", path), path})
 	}
-	return list
+	return list, err
 }
 
 // removable are the folders at which sticks and further disks stand.
@@ -57,7 +51,7 @@ func removable() []string {
 	var list []string
 	if runtime.GOOS == "windows" {
 		for c := 'D'; c <= 'Z'; c++ {
-			if path := string(c) + `:\`; exists(path) {
+			if path := string(c) + `:\`; isFolder(path) {
 				list = append(list, path)
 			}
 		}
@@ -66,7 +60,7 @@ func removable() []string {
 	for _, pattern := range []string{"/media/*", "/media/*/*", "/run/media/*/*", "/mnt/*", "/Volumes/*"} {
 		found, _ := filepath.Glob(pattern)
 		for _, path := range found {
-			if exists(path) {
+			if isFolder(path) {
 				list = append(list, path)
 			}
 		}
@@ -74,7 +68,7 @@ func removable() []string {
 	return list
 }
 
-func exists(path string) bool {
+func isFolder(path string) bool {
 	info, err := os.Stat(path)
 	return err == nil && info.IsDir()
 }

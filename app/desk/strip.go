@@ -16,7 +16,7 @@ type strip struct {
 	reader                               *words.Reader
 	labels                               *words.Labels
 	who, product, amount, payment, saved *canvas.Text
-	hidden                               bool
+	hidden                               bool // the person is out of sight
 	object                               fyne.CanvasObject
 }
 
@@ -32,9 +32,6 @@ func newStrip(reader *words.Reader, labels *words.Labels) *strip {
 	return s
 }
 
-// hide puts the person out of sight.
-func (s *strip) hide(on bool) { s.hidden = on }
-
 func (s *strip) show(iv *interview) {
 	who := iv.who
 	switch {
@@ -45,38 +42,21 @@ func (s *strip) show(iv *interview) {
 	}
 	setFigure(s.who, shorten(who, 260, theme.TextSize(), s.who.TextStyle), theme.ColorNameForeground)
 	setFigure(s.product, s.labels.Product(), theme.ColorNameForeground)
-	terms := iv.edition.Scorecard().Terms
 	loan, payment := "", ""
 	if amount, term, ok := iv.answers.AmountAndTerm(); ok && !s.hidden {
-		loan = s.reader.T("desk.loan", "amount", s.reader.Money(amount, int(terms.MoneyDecimals), terms.Currency),
-			"term", s.reader.Term(term, terms.TermUnit))
+		loan = loanWords(s.reader, s.labels, iv.answers)
 		if p, ok := iv.edition.Payment(amount, term); ok {
-			payment = s.reader.T("desk.payment_each", "payment", s.reader.Money(p, int(terms.MoneyDecimals), terms.Currency))
+			payment = s.reader.T("desk.payment_each", "payment", moneyWords(s.reader, s.labels, p))
 		}
 	}
 	setFigure(s.amount, loan, theme.ColorNameForeground)
 	setFigure(s.payment, payment, theme.ColorNameForeground)
-	saved := s.reader.T("desk.not_saved")
-	ink := colorQuiet
-	if !iv.savedAt.IsZero() {
+	saved, ink := s.reader.T("desk.not_saved"), colorQuiet
+	switch {
+	case iv.saveProblem != "":
+		ink = theme.ColorNameError
+	case iv.keptText == iv.text():
 		saved, ink = s.reader.T("desk.saved", "time", s.reader.Time(iv.savedAt)), colorApprove
 	}
-	if iv.saveProblem != "" {
-		saved, ink = iv.saveProblem, theme.ColorNameError
-	}
 	setFigure(s.saved, saved, ink)
-}
-
-// sideWidth gives the panel a width of its own: a third of a small window and
-// never more than it needs.
-type sideWidth struct{}
-
-const panelWidth = 350
-
-func (sideWidth) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(panelWidth, 100) }
-func (sideWidth) Layout(objects []fyne.CanvasObject, size fyne.Size) {
-	for _, o := range objects {
-		o.Move(fyne.NewPos(0, 0))
-		o.Resize(size)
-	}
 }

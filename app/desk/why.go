@@ -1,9 +1,10 @@
 package desk
 
 import (
+	"strings"
+
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/container"
-	"fyne.io/fyne/v2/theme"
 	"fyne.io/fyne/v2/widget"
 
 	"weighhouse/app/words"
@@ -19,6 +20,7 @@ type whyPage struct {
 
 func (p *whyPage) object() fyne.CanvasObject {
 	d, iv := p.desk, p.desk.interview
+	p.balance = nil
 	if iv == nil || !iv.shows() || d.hidden {
 		return d.nothingYet(iv)
 	}
@@ -34,7 +36,7 @@ func (p *whyPage) object() fyne.CanvasObject {
 		}
 		picture = lines
 	}
-	reasons := paragraph(joinLines(reasonWords(d.reader, labels, iv)))
+	reasons := paragraph(strings.Join(reasonWords(d.reader, labels, iv), "\n"))
 	head := container.NewVBox(heading(d.reader.T("why.title")), caption(d.reader.T("why.keys")))
 	return inset(frame(head, d.caution(), nil, nil, container.NewVScroll(container.NewVBox(picture,
 		widget.NewSeparator(), heading(d.reader.T("why.reasons")), reasons))))
@@ -79,31 +81,4 @@ func reasonWords(r *words.Reader, l *words.Labels, iv *interview) []string {
 		return []string{r.T("why.none")}
 	}
 	return lines
-}
-
-// nothingYet stands where a page has nothing to show, and says why.
-func (d *Desk) nothingYet(iv *interview) fyne.CanvasObject {
-	key := "desk.no_application"
-	switch {
-	case d.hidden:
-		key = "desk.hidden"
-	case iv != nil && !iv.complete:
-		key = "desk.shown_later"
-	case iv != nil:
-		key = "desk.hand_in"
-	}
-	l := paragraph(d.reader.T(key))
-	l.SizeName = theme.SizeNameSubHeadingText
-	return inset(l)
-}
-
-func joinLines(lines []string) string {
-	text := ""
-	for i, line := range lines {
-		if i > 0 {
-			text += "\n"
-		}
-		text += line
-	}
-	return text
 }

@@ -43,6 +43,7 @@ type worksheetBox struct {
 	sum  *canvas.Text
 
 	now, told model.Answer
+	whole     bool                      // all lines were gone through: an empty one is nothing
 	stated    bool                      // does not know
 	single    model.Maybe[model.Number] // one figure kept without lines
 	confirmed model.Maybe[model.Number] // the sum that was confirmed
@@ -76,7 +77,8 @@ func newWorksheetBox(reader *words.Reader, keys keys, kind worksheetKind) *works
 func (b *worksheetBox) answer() model.Answer { return b.now }
 func (b *worksheetBox) line() *note          { return b.note }
 func (b *worksheetBox) on() *hooks           { return &b.hooks }
-func (b *worksheetBox) focus()               { focusOn(b.rows[0].entry) }
+func (b *worksheetBox) focus()               { b.focusLine(0) }
+func (b *worksheetBox) focusLine(line int)   { focusOn(b.rows[line].entry) }
 func (b *worksheetBox) Disabled() bool       { return b.rows[0].entry.Disabled() }
 func (b *worksheetBox) Enable() {
 	for _, r := range b.rows {
@@ -91,7 +93,13 @@ func (b *worksheetBox) Disable() {
 	}
 }
 
+// lineAtWork is the line that has the focus, or the first.
+func (b *worksheetBox) lineAtWork() int {
+	return max(0, slices.IndexFunc(b.rows, func(r *worksheetRow) bool { return r.entry.lit }))
+}
+
 func (b *worksheetBox) put(a model.Answer) {
+	b.whole = a.State == model.Given
 	b.stated, b.single = a.State == model.StatedUnknown, model.Maybe[model.Number]{}
 	for i, r := range b.rows {
 		text := ""
@@ -183,6 +191,11 @@ func (b *worksheetBox) read(typing *worksheetRow) {
 		b.now = model.Answer{State: model.StatedUnknown}
 	case b.single.Set:
 		b.now = model.Answer{State: model.Given, Number: b.single.Value}
+	case sum.Set && !b.whole && slices.ContainsFunc(lines, func(m model.Money) bool { return !m.Set }):
+		// An officer on the way through the lines must not be told a result.
+		if typing == nil {
+			b.note.ask(b.reader.T("box.lines_open"))
+		}
 	case sum.Set:
 		b.weigh(model.Answer{State: model.Given, Lines: lines}, sum)
 	}
@@ -241,6 +254,7 @@ func (b *worksheetBox) moved(r *worksheetRow, gained bool) {
 	if m, err := r.money(); err == nil && m.Set {
 		r.entry.rewrite(b.reader.Amount(m.Amount, b.kind.decimals))
 	}
+	b.whole = b.whole || r == b.rows[len(b.rows)-1]
 	b.look(nil)
 }
 
@@ -249,6 +263,7 @@ func (b *worksheetBox) enter(i int) {
 		focusOn(b.rows[i+1].entry)
 		return
 	}
+	b.whole = true
 	sum := b.total()
 	if b.asked == sum && sum.Set {
 		b.confirmed = sum

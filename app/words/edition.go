@@ -46,9 +46,6 @@ func (l *Labels) Text(code, otherwise string) string {
 	return otherwise
 }
 
-// Of is the lender's own wording of any code, or empty.
-func (l *Labels) Of(code string) string { return l.words[code] }
-
 // Product names the product.
 func (l *Labels) Product() string { return l.Text("product", l.edition.Scorecard().Card.Product) }
 
@@ -64,6 +61,26 @@ func (l *Labels) Question(i *model.Item) string { return l.Text(i.Code, i.Questi
 
 // Unit is what a number is counted in.
 func (l *Labels) Unit(i *model.Item) string { return l.Text(i.Code+".unit", i.Unit) }
+
+// Currency names the money: as the lender words the unit of a characteristic
+// that is counted in it, else as the sheet Terms has it.
+func (l *Labels) Currency() string {
+	currency := l.edition.Scorecard().Terms.Currency
+	for _, i := range l.edition.Items() {
+		if i.Unit == currency {
+			return l.Unit(&i)
+		}
+	}
+	return currency
+}
+
+// MoneyDecimals is how many decimals money has.
+func (l *Labels) MoneyDecimals() int { return int(l.edition.Scorecard().Terms.MoneyDecimals) }
+
+// IsMoney tells that a number is counted in the edition's currency.
+func (l *Labels) IsMoney(i *model.Item) bool {
+	return i.Code == model.Amount || i.Unit == l.edition.Scorecard().Terms.Currency
+}
 
 // Help explains the question.
 func (l *Labels) Help(i *model.Item) string { return l.Text(i.Code+".help", i.Help) }
