@@ -204,51 +204,70 @@ func TestManyPartsAreNoTrouble(t *testing.T) {
 	}
 }
 
-// FuzzCompile feeds Compile whatever can be written as a canonical text, and
-// what comes out of it whatever can be written as answers.
-func FuzzCompile(f *testing.F) {
-	e := compiled(f, scorecardOf(f, sample))
-	text := e.Scorecard().Canonical()
-	answers := sampleAnswers(f, e).Text()
-	f.Add(text, answers)
-	for _, c := range refusals {
-		w := &workbook{f, sheetsOf(sample)}
-		for change := range strings.SplitSeq(c.changes, "; ") {
-			w.change(change)
-		}
-		s, _ := FromSheets(w.sheets)
-		if len(s.Canonical()) < 20_000 {
-			f.Add(s.Canonical(), answers)
+// judge takes a scorecard all the way, whatever it is: nothing may panic, and
+// an edition must keep its promises for whatever can be written as answers.
+func judge(t *testing.T, s Scorecard, answers string) {
+	e, problems := Compile(s)
+	for _, p := range problems {
+		if p.Code == "" || p.Error() == "" {
+			t.Errorf("%#v", p)
 		}
 	}
-	f.Fuzz(func(t *testing.T, text, answers string) {
-		s, problems := ParseCanonical(text)
-		e, more := Compile(s)
-		for _, p := range append(problems, more...) {
-			if p.Code == "" || p.Error() == "" {
-				t.Errorf("%#v", p)
+	if e == nil {
+		return
+	}
+	again, problems := ParseCanonical(e.Scorecard().Canonical())
+	if len(problems) > 0 || again.Fingerprint() != e.Fingerprint() {
+		t.Errorf("not the same read back: %v", problems)
+	}
+	a, _ := e.ParseAnswers(answers)
+	b := e.Bound(a)
+	if r, ok := e.Score(a); ok && (b.Lowest != r.LogOdds || b.Highest != r.LogOdds) {
+		t.Errorf("%+v of %+v", r, b)
+	}
+	e.Steps(a)
+	e.Reasons(a)
+	e.Range(a)
+	e.Check(a)
+	e.Ground(a, a.On)
+	e.Work(a)
+	if again, problems := e.ParseAnswers(a.Text()); len(problems) == 0 && again.Text() != a.Text() {
+		t.Errorf("%q was read as %q", a.Text(), again.Text())
+	}
+}
+
+// FuzzCompile changes three cells of sample.
+func FuzzCompile(f *testing.F) {
+	answers := sampleAnswers(f, compiled(f, scorecardOf(f, sample))).Text()
+	f.Add([]byte{1, 3, 5, 2, 1, 5, 4, 2, 3}, "1", "0.1", "share", answers)
+	f.Add([]byte{0, 1, 1, 5, 0, 3, 7, 5, 1}, "", "999999999999", "2026-02-29", "on\t2024-02-29\nclient\tnew\namount\t-1\nborn\t2999\n")
+	f.Fuzz(func(t *testing.T, spots []byte, first, second, third, answers string) {
+		sheets := sheetsOf(sample)
+		for i, value := range []string{first, second, third} {
+			if len(spots) < 3*(i+1) {
+				break
 			}
+			sheet := sheets[int(spots[3*i])%len(sheets)]
+			row := sheet.Rows[int(spots[3*i+1])%len(sheet.Rows)]
+			row[int(spots[3*i+2])%len(row)] = value
 		}
-		if e == nil {
-			return
+		s, _ := FromSheets(sheets)
+		judge(t, s, answers)
+	})
+}
+
+// FuzzParseCanonical reads anything as a canonical text; what it makes of it
+// must have one text that is read as the same.
+func FuzzParseCanonical(f *testing.F) {
+	f.Add(scorecardOf(f, sample).Canonical())
+	f.Add(canonicalHead + "\nWords\nCode\tLanguage\tText\na\tfr\t\\t\\n\\\\e\u0301\\\n")
+	f.Fuzz(func(t *testing.T, text string) {
+		s, _ := ParseCanonical(text)
+		once := s.Canonical()
+		again, _ := ParseCanonical(once)
+		if twice := again.Canonical(); once != twice {
+			t.Errorf("%q was read as %q", once, twice)
 		}
-		again, problems := ParseCanonical(e.Scorecard().Canonical())
-		if len(problems) > 0 || again.Fingerprint() != e.Fingerprint() {
-			t.Errorf("not the same read back: %v", problems)
-		}
-		a, _ := e.ParseAnswers(answers)
-		b := e.Bound(a)
-		if r, ok := e.Score(a); ok && (b.Lowest != r.LogOdds || b.Highest != r.LogOdds) {
-			t.Errorf("%+v of %+v", r, b)
-		}
-		e.Steps(a)
-		e.Reasons(a)
-		e.Range(a)
-		e.Check(a)
-		e.Ground(a, a.On)
-		e.Work(a)
-		if again, problems := e.ParseAnswers(a.Text()); len(problems) == 0 && again.Text() != a.Text() {
-			t.Errorf("%q was read as %q", a.Text(), again.Text())
-		}
+		judge(t, s, "")
 	})
 }
