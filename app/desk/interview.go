@@ -26,11 +26,11 @@ type interview struct {
 	handedIn bool
 
 	// Where the officer is on the page: the row that last had the focus, by
-	// item, the line of it, how far the page is scrolled, and what is typed
-	// that is no answer yet, by item.
+	// item, the line of it, how far down the page that row stands, and what is
+	// typed that is no answer yet, by item.
 	at     int
 	line   int
-	offset float32
+	down   float32
 	drafts map[int]draft
 	warned bool // that these answers are not kept
 
@@ -83,7 +83,7 @@ func (iv *interview) judge(index int, answer model.Answer) []model.Problem {
 // and typed is carried over wherever the new edition asks the same.
 func (iv *interview) changed(e *model.Edition, client model.ClientKind) *interview {
 	n := newInterview(e, iv.today, client)
-	n.who, n.at, n.offset, n.seen = iv.who, iv.at, iv.offset, iv.seen
+	n.who, n.at, n.down, n.seen = iv.who, iv.at, iv.down, iv.seen
 	n.answers.Carry(iv.answers)
 	for i, d := range iv.drafts {
 		theirs := iv.edition.Items()[i]
@@ -153,8 +153,12 @@ func (iv *interview) asked() (answered, all int) {
 	return all - len(iv.bounds.Missing), all
 }
 
-// shows tells whether the lender lets the officer see the result now.
+// shows tells whether the lender lets the officer see the result now. Of a
+// loan that cannot be had there is none.
 func (iv *interview) shows() bool {
+	if iv.refused() {
+		return false
+	}
 	switch iv.edition.Scorecard().Card.ResultShown {
 	case model.WhileAnswering:
 		return true
@@ -172,7 +176,7 @@ func (iv *interview) recommendation() (r model.Recommendation, settled bool) {
 		return "", false
 	case iv.complete:
 		return iv.result.Recommendation, true
-	case iv.bounds.Settled() && !iv.refused():
+	case iv.bounds.Settled():
 		return iv.bounds.Mildest, true
 	}
 	return "", false

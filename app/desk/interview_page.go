@@ -122,7 +122,9 @@ func (p *interviewPage) object() fyne.CanvasObject {
 // putBy puts by what is typed and no answer yet, and where the officer is.
 func (p *interviewPage) putBy() {
 	iv := p.iv
-	iv.offset = p.scroll.Offset.Y
+	if p.now != nil {
+		iv.down = p.now.Position().Y - p.scroll.Offset.Y
+	}
 	clear(iv.drafts)
 	for i, r := range p.rows {
 		if r == nil {
@@ -133,7 +135,7 @@ func (p *interviewPage) putBy() {
 		}
 	}
 	iv.line = 0
-	if w, ok := p.boxAt(iv.at).(*worksheetBox); ok {
+	if w, ok := p.rowAt(iv.at).box.(*worksheetBox); ok {
 		iv.line = w.lineAtWork()
 	}
 }
@@ -214,7 +216,7 @@ func (p *interviewPage) current(r *row, at int) {
 
 // goOn moves to the next question; after the last it says what is left to do.
 func (p *interviewPage) goOn(index int) {
-	r, note := p.desk.reader, p.boxAt(p.iv.at).line()
+	r, note := p.desk.reader, p.rowAt(p.iv.at).box.line()
 	if next := p.iv.next(index); next >= 0 {
 		p.rows[next].box.focus()
 	} else if open := p.iv.open(); open >= 0 {
@@ -244,23 +246,24 @@ const (
 	atProduct = -3
 )
 
-// boxAt is the box of a row.
-func (p *interviewPage) boxAt(at int) box {
+func (p *interviewPage) rowAt(at int) *row {
 	switch at {
 	case atName:
-		return p.who.box
+		return p.who
 	case atClient:
-		return p.kind.box
+		return p.kind
 	case atProduct:
-		return p.what.box
+		return p.what
 	}
-	return p.rows[at].box
+	return p.rows[at]
 }
 
 // opened goes back to where the officer was.
 func (p *interviewPage) opened() {
-	p.scroll.ScrollToOffset(fyne.NewPos(0, p.iv.offset))
-	switch b := p.boxAt(p.iv.at).(type) {
+	r := p.rowAt(p.iv.at)
+	most := p.scroll.Content.MinSize().Height - p.scroll.Size().Height
+	p.scroll.ScrollToOffset(fyne.NewPos(0, max(0, min(r.Position().Y-p.iv.down, most))))
+	switch b := r.box.(type) {
 	case *worksheetBox:
 		b.focusLine(p.iv.line)
 	default:

@@ -41,8 +41,8 @@ func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caut
 		decider: paragraph(""), payment: paragraph(""), rules: paragraph(""), problem: paragraph("")}
 	p.firmness.SizeName, p.firmness.Importance = theme.SizeNameCaptionText, widget.LowImportance
 	p.rules.Importance, p.problem.Importance = widget.WarningImportance, widget.DangerImportance
-	top := container.NewBorder(nil, nil, p.mark, nil, container.NewVBox(p.verdict, p.firmness))
-	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.odds, inset(p.figures),
+	top := container.NewHBox(p.mark, container.NewCenter(p.verdict))
+	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.firmness, p.odds, inset(p.figures),
 		widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem)
 	ground := canvas.NewRectangle(shade(colorRaised))
 	p.object = container.NewStack(ground, container.NewBorder(nil,
@@ -76,7 +76,7 @@ func (p *panel) show(iv *interview) {
 // firm tells how firmly the recommendation stands.
 func (p *panel) firm(iv *interview, settled bool) string {
 	switch {
-	case iv.refused() || !iv.shows():
+	case !iv.shows():
 		return p.reader.T(iv.waitsFor())
 	case iv.handedIn:
 		return p.reader.T("desk.handed_in")
