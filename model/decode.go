@@ -1,7 +1,6 @@
 package model
 
 import (
-	"errors"
 	"reflect"
 	"slices"
 )
@@ -55,16 +54,11 @@ func (d *decoder) warn(p Problem) { p.Warning = true; d.add(p) }
 
 // cell reads one cell and lists its problem, if it has one.
 func (d *decoder) cell(v reflect.Value, c Column, place Place, text string) {
-	err := setCell(v, c, text)
-	if err == nil {
-		return
+	if err := setCell(v, c, text); err != nil {
+		p := err.(Problem)
+		p.Place = place
+		d.add(p)
 	}
-	var p Problem
-	if !errors.As(err, &p) {
-		p = Problem{Code: "not_a_number", Args: Args{"value": text}}
-	}
-	p.Place = place
-	d.add(p)
 }
 
 // columns finds each fixed column's place in the sheet, -1 where it is
@@ -125,6 +119,9 @@ func decodeItems[T any](d *decoder, form SheetForm, row *T) {
 		return
 	}
 	at := d.columns(sheet, SheetForm{Name: form.Name, Columns: []Column{{Name: "Item", Required: true}, {Name: "Value", Required: true}}}, nil)
+	if at[0] < 0 || at[1] < 0 {
+		return
+	}
 	values, rowOf := map[string]string{}, map[string]int{}
 	for r, cells := range sheet.Rows {
 		item, place := textAt(cells, at[0]), Place{Sheet: form.Name, Row: r + 1, Column: "Item"}

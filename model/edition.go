@@ -97,10 +97,8 @@ func (item *Item) clamp(n Number) Number { return min(max(n, item.from), item.to
 
 // attribute finds the place of a choice's code.
 func (item *Item) attribute(code string) (int, error) {
-	for i, a := range item.Attributes {
-		if a.Code == code && !reserved(code) {
-			return i, nil
-		}
+	if n := item.AttributeNamed(code); n >= 0 && !reserved(code) {
+		return n, nil
 	}
 	return 0, Problem{Code: "unknown_attribute", Args: Args{"value": code, "options": item.options()}}
 }

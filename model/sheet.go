@@ -142,7 +142,7 @@ func eachField(row reflect.Value, f func(name string, tag reflect.StructTag, v r
 	}
 }
 
-// setCell reads canonical text into a field.
+// setCell reads canonical text into a field. Errors are Problems.
 func setCell(v reflect.Value, c Column, text string) error {
 	switch {
 	case text == "" && c.Required:
