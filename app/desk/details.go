@@ -22,7 +22,7 @@ func (p *detailsPage) key(fyne.KeyName) bool { return false }
 func (p *detailsPage) object() fyne.CanvasObject {
 	d, iv := p.desk, p.desk.interview
 	if iv == nil || d.hidden {
-		return d.nothingYet(iv)
+		return d.nothingYet(d.reader.T("details.title"), iv)
 	}
 	r, e := d.reader, iv.edition
 	labels := d.labels(e)

@@ -29,7 +29,7 @@ func (p *fitsPage) object() fyne.CanvasObject {
 	}
 	p.list = nil
 	if iv == nil || !iv.complete || !iv.shows() || d.hidden {
-		return d.nothingYet(iv)
+		return d.nothingYet(d.reader.T("fits.title"), iv)
 	}
 	r, e := d.reader, iv.edition
 	offers := e.TermsThatFit(iv.answers)

@@ -35,7 +35,7 @@ func (p *keptPage) object() fyne.CanvasObject {
 	}
 	p.list = nil
 	if d.hidden {
-		return d.nothingYet(nil)
+		return d.nothingYet(r.T("shell.kept"), nil)
 	}
 	p.about = paragraph("")
 	p.list = newListing([]listColumn{

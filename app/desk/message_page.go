@@ -34,7 +34,7 @@ func message(text string) fyne.CanvasObject {
 
 // nothingYet stands where a page has nothing to show, and says why. The
 // application is nil where there is none.
-func (d *Desk) nothingYet(iv *interview) fyne.CanvasObject {
+func (d *Desk) nothingYet(title string, iv *interview) fyne.CanvasObject {
 	key := "desk.no_application"
 	switch {
 	case d.hidden:
@@ -42,7 +42,7 @@ func (d *Desk) nothingYet(iv *interview) fyne.CanvasObject {
 	case iv != nil:
 		key = iv.waitsFor()
 	}
-	return message(d.reader.T(key))
+	return inset(frame(heading(title), nil, nil, nil, message(d.reader.T(key))))
 }
 
 // curtain covers the result from whoever looks over the desk.

@@ -129,7 +129,7 @@ func (p *panel) deciderWords(iv *interview) string {
 // edition works both out and they are known.
 func (p *panel) paymentWords(iv *interview) string {
 	share, payment, left, ok := p.edition.PaymentShare()
-	if !ok || !iv.worked[payment].Known() || iv.worked[payment].State != model.Given {
+	if !ok || iv.refused() || !iv.worked[payment].Known() || iv.worked[payment].State != model.Given {
 		return ""
 	}
 	money := func(i int) string { return moneyWords(p.reader, p.labels, iv.worked[i].Low) }

@@ -22,7 +22,7 @@ func (p *whyPage) object() fyne.CanvasObject {
 	d, iv := p.desk, p.desk.interview
 	p.balance = nil
 	if iv == nil || !iv.shows() || d.hidden {
-		return d.nothingYet(iv)
+		return d.nothingYet(d.reader.T("why.title"), iv)
 	}
 	labels := d.labels(iv.edition)
 	p.balance = newBalance(d.reader, labels, iv.edition)

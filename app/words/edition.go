@@ -66,9 +66,10 @@ func (l *Labels) Unit(i *model.Item) string { return l.Text(i.Code+".unit", i.Un
 // that is counted in it, else as the sheet Terms has it.
 func (l *Labels) Currency() string {
 	currency := l.edition.Scorecard().Terms.Currency
-	for _, i := range l.edition.Items() {
-		if i.Unit == currency {
-			return l.Unit(&i)
+	for i := range l.edition.Items() {
+		item := &l.edition.Items()[i]
+		if unit := l.Unit(item); item.Unit == currency && unit != currency {
+			return unit
 		}
 	}
 	return currency
