@@ -39,7 +39,7 @@ func (p *keptPage) object() fyne.CanvasObject {
 	}
 	p.about = paragraph("")
 	p.list = newListing([]listColumn{
-		{r.T("kept.when"), 2.1}, {r.T("kept.who"), 2.2}, {r.T("kept.amount"), 2.4}, {r.T("kept.pd"), 0.9}, {r.T("kept.score"), 0.7}}, p.cells)
+		{r.T("kept.when"), 1.8}, {r.T("kept.who"), 2.1}, {r.T("kept.amount"), 2.9}, {r.T("kept.pd"), 0.8}, {r.T("kept.score"), 0.6}}, p.cells)
 	p.list.marked = true
 	p.list.keys = d.key
 	p.list.onMove = p.tell

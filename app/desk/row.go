@@ -59,7 +59,7 @@ const (
 	rightEdge     = 12 // the scroll bar's
 	questionGap   = 4
 	widest        = 620 // of a box beneath its question
-	questionLines = 2
+	questionLines = 3
 	helpLines     = 3
 )
 

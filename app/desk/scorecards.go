@@ -165,7 +165,8 @@ func (p *scorecardsPage) fill() {
 // officer has gone elsewhere is let go.
 func (p *scorecardsPage) read(path string) {
 	d := p.desk
-	d.remember("folder", filepath.Dir(path))
+	p.folder = filepath.Dir(path)
+	d.remember("folder", p.folder)
 	p.say(d.reader.T("scorecards.reading", "file", path))
 	go func() {
 		var reading *workbook.Reading
@@ -306,7 +307,6 @@ func (p *scorecardsPage) saveCopy() {
 
 // writeBeside makes a file beside the workbook, named after it.
 func (p *scorecardsPage) writeBeside(ending string, do func(*os.File) error) {
-	p.folder = filepath.Dir(p.file)
 	p.write(strings.TrimSuffix(filepath.Base(p.file), filepath.Ext(p.file))+ending, do)
 }
 
