@@ -708,6 +708,9 @@ func TestScorecardRefused(t *testing.T) {
 		t.Errorf("the list: %v\n%s", err, list)
 	}
 	w.says("Written: ")
+	if p.list.chosen != 1 {
+		t.Errorf("writing moved the list to row %d", p.list.chosen)
+	}
 	tapPush(w, "Save the list")
 	w.says("Nothing was written: there is already a file")
 	tapPush(w, "Save a copy with notes")

@@ -30,6 +30,7 @@ type scorecardsPage struct {
 	reading *workbook.Reading // nil while looking for a file
 	start   fyne.Focusable    // where the work starts
 	file    string
+	looked  int    // the problem last looked at
 	said    string // the outcome of the last act, under the title
 }
 
@@ -181,7 +182,7 @@ func (p *scorecardsPage) read(path string) {
 			case err != nil:
 				p.say(d.reader.T("scorecards.unreadable", "reason", err.Error()))
 			default:
-				p.reading, p.file = reading, path
+				p.reading, p.file, p.looked = reading, path, 0
 				p.say("")
 			}
 		})
@@ -245,9 +246,14 @@ func (p *scorecardsPage) problemList(problems []model.Problem, full *widget.Labe
 		})
 	list.marked = true
 	list.keys = p.desk.key
-	list.onMove = func(row int) { setParagraph(full, r.Problem(problems[row])) }
+	list.onMove = func(row int) {
+		p.looked = row
+		setParagraph(full, r.Problem(problems[row]))
+	}
+	looked := p.looked
 	list.setCount(len(problems))
-	list.onMove(0)
+	list.choose(looked)
+	list.onMove(looked)
 	return list
 }
 
