@@ -12,6 +12,7 @@ import (
 	"strings"
 	"testing"
 
+	"weighhouse/app/practice"
 	"weighhouse/model"
 	"weighhouse/store"
 	"weighhouse/store/workbook"
@@ -126,7 +127,10 @@ func TestWrongUse(t *testing.T) {
 		{"help judge", "no command “judge”"},
 		{"help score check", "what to do with “check”"},
 		{"practice -product nothing out.xlsx", "Give -product with one of"},
-		{"prove", "needs the option -branch"},
+		{"prove somewhere", "what to do with “somewhere”"},
+		{"practice", "needs the name of a file"},
+		{"practice -branch . out.xlsx", "what to do with “out.xlsx”"},
+		{"practice . -product farm_season", "-product does not go with a branch"},
 	} {
 		code, out, problems := call(t, dir, "", strings.Fields(c.args)...)
 		if code != 2 || out != "" || !strings.Contains(problems, c.want) || !strings.Contains(problems, "clerk help") {
@@ -156,8 +160,8 @@ func TestHelp(t *testing.T) {
 			if strings.Contains(one, "[clerk") || strings.Contains(one, "no value") {
 				t.Errorf("%s: %s", language, one)
 			}
-			for _, option := range append(append(c.options, c.switches...), "card") {
-				if (option != "card" || len(c.options) > 1) && !strings.Contains(one, "-"+option) {
+			for _, option := range append(c.options, c.switches...) {
+				if !strings.Contains(one, "-"+option) {
 					t.Errorf("%s: help %s does not name -%s", language, c.name, option)
 				}
 			}
@@ -257,10 +261,15 @@ func TestBlankAndPractice(t *testing.T) {
 func TestProve(t *testing.T) {
 	dir := t.TempDir()
 	code, out, problems := call(t, dir, "", "prove", "-branch", ".")
-	if code != 1 || out != "" || problems != "The folder . holds no branch.\n" {
+	if code != 1 || out != "" || !strings.Contains(problems, `clerk practice -branch "."`) {
 		t.Error(code, out, problems)
 	}
-	makePractice(t, dir)
+	for range 2 { // what is there stays
+		code, out, problems = call(t, dir, "", "practice", ".")
+		if code != 0 || problems != "" || !strings.Contains(out, "is in .") {
+			t.Error(code, out, problems)
+		}
+	}
 	code, out, problems = call(t, dir, "", "prove", "-branch", ".")
 	if code != 0 || problems != "" || !strings.HasPrefix(out, "200 kept results give the same figures again") {
 		t.Error(code, out, problems)
@@ -268,6 +277,30 @@ func TestProve(t *testing.T) {
 	tamper(t, filepath.Join(dir, store.FileName))
 	code, out, problems = call(t, dir, "", "prove", "-branch", ".")
 	if code != 1 || problems != "" || !strings.Contains(out, "Entry 5 ") {
+		t.Error(code, out, problems)
+	}
+}
+
+// Without -branch it is the window's own practice branch.
+func TestProveTheUsersOwn(t *testing.T) {
+	dir := t.TempDir()
+	for _, name := range []string{"HOME", "XDG_CONFIG_HOME", "AppData"} {
+		t.Setenv(name, dir)
+	}
+	folder, err := practice.Folder()
+	if err != nil || !strings.HasPrefix(folder, dir) {
+		t.Fatal(folder, err)
+	}
+	if _, out, _ := call(t, dir, "", "help", "prove"); !strings.Contains(out, folder) {
+		t.Error(out)
+	}
+	if code, _, problems := call(t, dir, "", "prove"); code != 1 || !strings.Contains(problems, folder) {
+		t.Error(code, problems)
+	}
+	if code, _, problems := call(t, dir, "", "practice", folder+string(filepath.Separator)); code != 0 {
+		t.Error(code, problems)
+	}
+	if code, out, problems := call(t, dir, "", "prove"); code != 0 || !strings.HasPrefix(out, "200 kept results") {
 		t.Error(code, out, problems)
 	}
 }

@@ -5,6 +5,7 @@ import (
 	"slices"
 	"strings"
 
+	"weighhouse/app/practice"
 	"weighhouse/app/words"
 	"weighhouse/model"
 )
@@ -28,8 +29,8 @@ func commands() []command {
 		{name: "ask", options: []string{"card", "branch", "product", "client", "on"}, run: (*clerk).ask},
 		{name: "check", switches: []string{"json"}, files: 1, run: (*clerk).check},
 		{name: "blank", options: []string{"card"}, files: 1, run: (*clerk).blank},
-		{name: "practice", options: []string{"product"}, files: 1, run: (*clerk).practice},
-		{name: "prove", options: []string{"branch"}, needed: []string{"branch"}, run: (*clerk).prove},
+		{name: "practice", options: []string{"product", "branch"}, files: -1, run: (*clerk).practice},
+		{name: "prove", options: []string{"branch"}, run: (*clerk).prove},
 		{name: "help", files: -1, run: (*clerk).help},
 	}
 }
@@ -145,7 +146,8 @@ func (k *clerk) helpOn(name string) error {
 		k.files = nil
 		return k.help()
 	}
-	fmt.Fprint(k.out, k.words.T("clerk.help."+name))
+	folder, _ := practice.Folder() // only named here
+	fmt.Fprint(k.out, k.words.T("clerk.help."+name, "folder", folder))
 	return nil
 }
 

@@ -3,11 +3,21 @@ package main
 import (
 	"context"
 	"fmt"
+
+	"weighhouse/app/practice"
 )
 
-// prove scores every kept result again and walks the journal.
+// prove scores every kept result again and walks the journal, without -branch
+// of the practice branch that the window opens.
 func (k *clerk) prove() error {
-	s, err := k.signIn(k.option["branch"])
+	dir := k.option["branch"]
+	if dir == "" {
+		var err error
+		if dir, err = practice.Folder(); err != nil {
+			return err
+		}
+	}
+	s, err := k.signIn(dir)
 	if err != nil {
 		return err
 	}

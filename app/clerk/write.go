@@ -2,6 +2,9 @@ package main
 
 import (
 	"bytes"
+	"context"
+	"fmt"
+	"os"
 	"strings"
 
 	"weighhouse/app/practice"
@@ -28,8 +31,27 @@ func (k *clerk) blank() error {
 	return k.writeNew(k.files[0], b.Bytes())
 }
 
-// practice writes a workbook of the practice branch.
+// practice writes a workbook of the practice branch, or makes the branch in a
+// folder.
 func (k *clerk) practice() error {
+	folder := k.option["branch"]
+	if folder == "" && len(k.files) > 0 && isFolder(k.files[0]) {
+		folder, k.files = k.files[0], k.files[1:]
+	}
+	most := 1
+	if folder != "" {
+		most = 0
+	}
+	switch {
+	case len(k.files) > most:
+		return misuse("clerk_too_many_files", "value", k.files[most], "command", "practice")
+	case len(k.files) < most:
+		return misuse("clerk_file_needed", "command", "practice")
+	case folder != "" && k.option["product"] != "":
+		return misuse("clerk_branch_has_all", "value", "-product")
+	case folder != "":
+		return k.practiceBranch(folder)
+	}
 	cards, err := practice.Scorecards()
 	if err != nil {
 		return err
@@ -43,4 +65,20 @@ func (k *clerk) practice() error {
 		products = append(products, card.Card.ProductCode)
 	}
 	return misuse("clerk_product_needed", "options", strings.Join(products, ", "))
+}
+
+// isFolder tells a folder, made or not, from a file.
+func isFolder(path string) bool {
+	info, err := os.Stat(path)
+	return err == nil && info.IsDir() || os.IsPathSeparator(path[len(path)-1])
+}
+
+// practiceBranch makes the practice branch where it is not there yet.
+func (k *clerk) practiceBranch(folder string) error {
+	s, err := practice.Open(context.Background(), folder)
+	if err != nil {
+		return err
+	}
+	fmt.Fprintln(k.out, k.words.T("clerk.practice_branch", "folder", folder))
+	return s.Branch().Close()
 }

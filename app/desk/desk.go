@@ -5,8 +5,6 @@ package desk
 import (
 	"cmp"
 	"context"
-	"os"
-	"path/filepath"
 	"strconv"
 	"sync/atomic"
 
@@ -99,11 +97,10 @@ func Run(a fyne.App, o Options, painted func()) error {
 func openBranch(o Options) (*store.Session, error) {
 	dir := o.Folder
 	if dir == "" {
-		base, err := os.UserConfigDir()
-		if err != nil {
+		var err error
+		if dir, err = practice.Folder(); err != nil {
 			return nil, err
 		}
-		dir = filepath.Join(base, "weighhouse", "practice")
 	}
 	return practice.Open(context.Background(), dir)
 }

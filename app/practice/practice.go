@@ -5,6 +5,8 @@ package practice
 import (
 	"bytes"
 	"context"
+	"os"
+	"path/filepath"
 	"slices"
 	"time"
 
@@ -13,6 +15,13 @@ import (
 	"weighhouse/store"
 	"weighhouse/store/workbook"
 )
+
+// Folder is the user's own folder for the practice branch, made or not. The
+// error is the system's, where it knows no place for a user's settings.
+func Folder() (string, error) {
+	base, err := os.UserConfigDir()
+	return filepath.Join(base, "weighhouse", "practice"), err
+}
 
 // Open opens the practice branch in a folder with its invented person signed
 // in. Where the folder has no branch it makes it first: the scorecards
