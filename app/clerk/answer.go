@@ -89,14 +89,19 @@ func (q *interview) result() {
 	band, caution := q.labels.Band(r.Band)
 	say := func(text string) { fmt.Fprintln(q.out, text) }
 	head := func(key string) { say("\n" + q.words.T(key)) }
-	say("\n" + strings.ToUpper(q.words.Name(r.Recommendation)))
+	verdict := strings.ToUpper(q.words.Name(r.Recommendation))
+	most, over := overCap(q.answers, r)
+	if over = over && r.Recommendation != model.Decline; over {
+		verdict = q.words.T("clerk.at_most", "recommendation", verdict, "amount", q.money(most))
+	}
+	say("\n" + verdict)
 	say(indent + q.words.T("desk.figures", "pd", r.PD, "score", q.words.Score(r.Score), "band", band))
 	say(indent + q.words.PDPlain(r.PD, int(card.DefaultDaysLate), int(card.WithinMonths)))
 	if low, high, ok := q.edition.Range(q.answers); ok {
 		say(indent + q.words.T("clerk.range", "low", low, "high", high))
 	}
 	say(indent + q.words.T("desk.decides."+string(q.edition.Decider(r, amount))))
-	if r.LargestAmount.Set {
+	if r.LargestAmount.Set && !over {
 		say(indent + q.words.T("desk.largest", "amount", q.money(r.LargestAmount.Value)))
 	}
 	if text := q.payment(); text != "" {

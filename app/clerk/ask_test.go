@@ -134,6 +134,18 @@ func TestAskShowsWhenTheLenderSays(t *testing.T) {
 	}
 }
 
+// The verdict names a rule's cap where more is asked for.
+func TestAskCap(t *testing.T) {
+	dir := desk(t)
+	for language, want := range map[string]string{"en": "\nAPPROVE, 500 crowns at the most\n", "fr": "\nAPPROUVER, 500 crowns au plus\n", "es": "\nAPROBAR, 500 crowns como máximo\n"} {
+		const in = "n\n600\n12\n1\nn\nn\n2015\n0\n=900\n"
+		_, out, _ := call(t, dir, in, "ask", "-card", "card.xlsx", "-on", "2026-03-02", "-language", language)
+		if !strings.Contains(strings.ReplaceAll(out, "\u00a0", " "), want) {
+			t.Errorf("no %q in\n%s", want, out)
+		}
+	}
+}
+
 // A result handed in only at the end can be gone back from.
 func TestAskHandInGoesBack(t *testing.T) {
 	card := stallCard(t)

@@ -63,7 +63,7 @@ func (k *clerk) score() error {
 	if client == "" {
 		client = model.NewClients
 	}
-	s := &scorer{edition: edition, columns: columns, words: k.words, rules: edition.Rules(), on: on, client: client, today: k.today}
+	s := &scorer{edition: edition, columns: columns, words: k.words, labels: words.LabelsOf(edition, k.words.Style().Language), rules: edition.Rules(), on: on, client: client, today: k.today}
 	bar := k.progress()
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM) // to take away what is half written
 	defer stop()
@@ -87,6 +87,7 @@ type scorer struct {
 	edition   *model.Edition
 	columns   *table.Columns
 	words     *words.Reader
+	labels    *words.Labels
 	rules     []model.PolicyRule
 	on, today model.Date
 	client    model.ClientKind
@@ -191,6 +192,11 @@ func (s *scorer) row(row table.Row) (cells []string, scored bool) {
 		if r, ok := s.edition.Score(a.Answers); ok {
 			scored = true
 			s.figures(cells[1:], a.Answers, r)
+			if most, over := overCap(a.Answers, r); over {
+				p := problem("over_cap", "most", most.String(), "currency", s.labels.Currency())
+				p.Place = model.Place{Sheet: "Answers", Column: model.Amount}
+				a.Problems = append(a.Problems, p)
+			}
 			for _, p := range s.edition.Ground(a.Answers, s.today) {
 				if p.Place.Column != "" { // the others are told once, of all
 					a.Problems = append(a.Problems, p)
@@ -204,6 +210,12 @@ func (s *scorer) row(row table.Row) (cells []string, scored bool) {
 	}
 	cells[len(cells)-1] = strings.Join(sentences, " ")
 	return cells, scored
+}
+
+// overCap is the most that the rules allow, where more is asked for.
+func overCap(a *model.Answers, r model.Result) (most model.Number, over bool) {
+	amount, _, _ := a.AmountAndTerm()
+	return r.LargestAmount.Value, r.LargestAmount.Set && amount > r.LargestAmount.Value
 }
 
 // figures fills in log_odds to reasons, in canonical text and codes.

@@ -181,7 +181,7 @@ func scorerOf(t testing.TB, e *model.Edition, header []string) *scorer {
 		t.Fatal("no columns")
 	}
 	day := model.Date{Year: 2026, Month: 3, Day: 2}
-	return &scorer{edition: e, columns: columns, words: words.New(words.Style{}), rules: e.Rules(), on: day, client: model.NewClients, today: day}
+	return &scorer{edition: e, columns: columns, words: words.New(words.Style{}), labels: words.LabelsOf(e, "en"), rules: e.Rules(), on: day, client: model.NewClients, today: day}
 }
 
 // What clerk writes of any applicant is what model says.
@@ -229,6 +229,18 @@ func TestFiguresAreTheModels(t *testing.T) {
 			}
 		}
 	})
+}
+
+// What is asked for above a rule's cap is said of the row.
+func TestOverCap(t *testing.T) {
+	e, _ := model.Compile(stallCard(t))
+	s := scorerOf(t, e, []string{"amount", "term", "home", "has_stall", "opened", "late_days", "household"})
+	for amount, want := range map[string]string{"500": "", "550": "amount: The rules allow 500 crowns at the most, and more is asked for."} {
+		cells, scored := s.row(table.Row{Number: 1, Cells: []string{amount, "12", "own", "no", "2015", "0", "900"}})
+		if got := cells[len(cells)-1]; !scored || cells[8] != "no_stall" || got != want {
+			t.Errorf("%s: %q", amount, cells)
+		}
+	}
 }
 
 // Many batches and several workers keep the order of the rows.
