@@ -9,8 +9,11 @@ import (
 	"os/exec"
 	"path/filepath"
 	"runtime"
+	"slices"
 	"strings"
 	"testing"
+
+	"github.com/xuri/excelize/v2"
 
 	"weighhouse/app/practice"
 	"weighhouse/model"
@@ -224,6 +227,7 @@ func TestBlankAndPractice(t *testing.T) {
 	for _, c := range []struct{ args, file string }{
 		{"blank b.xlsx", "b.xlsx"},
 		{"blank -card card.xlsx b.csv", "b.csv"},
+		{"try card.xlsx t.xlsx", "t.xlsx"},
 		{"practice p.xlsx", "p.xlsx"},
 		{"practice -product farm_season q.xlsx", "q.xlsx"},
 	} {
@@ -244,6 +248,22 @@ func TestBlankAndPractice(t *testing.T) {
 	}
 	if code, _, _ := call(t, dir, "", "practice", "p.xlsx"); code != 0 {
 		t.Error("the same workbook over itself:", code)
+	}
+	for _, args := range []string{"blank b.csv", "blank -card card.xlsx c.xlsx", "practice p.csv", "try card.xlsx t.csv", "score -card card.xlsx -in b.csv -out c.xlsx"} {
+		code, _, problems := call(t, dir, "", strings.Fields(args)...)
+		if _, err := os.Stat(filepath.Join(dir, "c.xlsx")); code != 1 || !strings.Contains(problems, "a name that ends in .") || err == nil {
+			t.Errorf("clerk %s: %d %s", args, code, problems)
+		}
+	}
+	if code, _, problems := call(t, dir, "", "try", "b.xlsx", "u.xlsx"); code != 1 || !strings.Contains(problems, "Card!") {
+		t.Error("a blank workbook to try:", code, problems)
+	}
+	_, want, _ := call(t, dir, "", "check", "card.xlsx")
+	if _, got, _ := call(t, dir, "", "check", "t.xlsx"); got != want {
+		t.Error(got)
+	}
+	if rows, err := excelize.OpenFile(filepath.Join(dir, "t.xlsx")); err != nil || !slices.Contains(rows.GetSheetList(), "Try it") {
+		t.Error(err)
 	}
 	for _, file := range []string{"p.xlsx", "q.xlsx"} {
 		if code, out, _ := call(t, dir, "", "check", file); code != 0 || !strings.Contains(out, "Telephone code") {

@@ -29,6 +29,7 @@ func commands() []command {
 		{name: "ask", options: []string{"card", "branch", "product", "client", "on"}, run: (*clerk).ask},
 		{name: "check", switches: []string{"json"}, files: 1, run: (*clerk).check},
 		{name: "blank", options: []string{"card"}, files: 1, run: (*clerk).blank},
+		{name: "try", files: 2, run: (*clerk).tryIt},
 		{name: "practice", options: []string{"product", "branch"}, files: -1, run: (*clerk).practice},
 		{name: "prove", options: []string{"branch"}, run: (*clerk).prove},
 		{name: "help", files: -1, run: (*clerk).help},

@@ -28,15 +28,21 @@ func (k *clerk) edition() (*model.Edition, error) {
 			return nil, misuse("clerk_only_with_branch", "value", "-"+name)
 		}
 	}
-	reading, err := k.readCard(card)
+	reading, err := k.accepted(card)
 	if err != nil {
 		return nil, err
 	}
-	if reading.Edition == nil {
-		k.list(k.err, card, reading.Problems)
-		return nil, errRefused
-	}
 	return reading.Edition, nil
+}
+
+// accepted reads a workbook that has an edition.
+func (k *clerk) accepted(path string) (*workbook.Reading, error) {
+	reading, err := k.readCard(path)
+	if err == nil && reading.Edition == nil {
+		k.list(k.err, path, reading.Problems)
+		err = errRefused
+	}
+	return reading, err
 }
 
 // readCard reads a workbook; "-" is standard input.

@@ -8,6 +8,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"strings"
 )
 
 // An output is a file in the making: it has its name only once it is whole.
@@ -106,6 +107,14 @@ func (k *clerk) writeNew(path string, b []byte) error {
 	}
 	_, err = o.Write(b)
 	return o.finish(err)
+}
+
+// ending refuses a name that promises another kind of file than is written.
+func ending(path, kind string) error {
+	if path == "-" || strings.EqualFold(filepath.Ext(path), kind) {
+		return nil
+	}
+	return problem("clerk_other_ending", "file", path, "kind", kind)
 }
 
 // cannot turns what the system says of a file into a Problem.

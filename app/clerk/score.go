@@ -8,6 +8,7 @@ import (
 	"io"
 	"os"
 	"os/signal"
+	"path/filepath"
 	"runtime"
 	"strings"
 	"syscall"
@@ -29,6 +30,9 @@ func (k *clerk) score() error {
 	edition, err := k.edition()
 	if err != nil {
 		return err
+	}
+	if out := k.option["out"]; strings.EqualFold(filepath.Ext(out), ".xlsx") {
+		return ending(out, ".csv")
 	}
 	in := k.in
 	if path := k.option["in"]; path != "-" {

@@ -90,6 +90,7 @@ func TestScoreRefused(t *testing.T) {
 	write(t, filepath.Join(dir, "twice.csv"), "amount,Amount\n")
 	write(t, filepath.Join(dir, "empty.csv"), "")
 	write(t, filepath.Join(dir, "latin.csv"), "amount,pr\xe9nom\n")
+	write(t, filepath.Join(dir, "card.csv"), read(t, filepath.Join(dir, "card.xlsx")))
 	if err := os.Symlink("in.csv", filepath.Join(dir, "link.csv")); err != nil {
 		t.Fatal(err)
 	}
@@ -99,7 +100,7 @@ func TestScoreRefused(t *testing.T) {
 		{"in.csv", "out.csv", "in.csv", "in.csv: "},
 		{"in.csv", "in.csv", "card.xlsx", "in.csv is being read"},
 		{"in.csv", "link.csv", "card.xlsx", "link.csv is being read"},
-		{"in.csv", "./card.xlsx", "card.xlsx", "card.xlsx is being read"},
+		{"in.csv", "./card.csv", "card.csv", "card.csv is being read"},
 		{"in.csv", "no/where.csv", "card.xlsx", "There is no no/where.csv"},
 		{"in.csv", ".", "card.xlsx", ". could not be used"},
 		{"other.csv", "out.csv", "card.xlsx", "No column of the file answers"},

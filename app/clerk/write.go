@@ -17,6 +17,13 @@ import (
 // of a table of applicants for that scorecard.
 func (k *clerk) blank() error {
 	var b bytes.Buffer
+	kind := ".xlsx"
+	if k.option["card"] != "" {
+		kind = ".csv"
+	}
+	if err := ending(k.files[0], kind); err != nil {
+		return err
+	}
 	if k.option["card"] == "" {
 		if err := workbook.Blank(&b); err != nil {
 			return err
@@ -29,6 +36,22 @@ func (k *clerk) blank() error {
 		b.WriteString(strings.Join(table.HeaderOf(edition), ",") + "\n")
 	}
 	return k.writeNew(k.files[0], b.Bytes())
+}
+
+// tryIt writes an accepted workbook again, with the sheet that scores.
+func (k *clerk) tryIt() error {
+	if err := ending(k.files[1], ".xlsx"); err != nil {
+		return err
+	}
+	reading, err := k.accepted(k.files[0])
+	if err != nil {
+		return err
+	}
+	var b bytes.Buffer
+	if err := workbook.Write(&b, reading.Scorecard); err != nil {
+		return err
+	}
+	return k.writeNew(k.files[1], b.Bytes())
 }
 
 // practice writes a workbook of the practice branch, or makes the branch in a
@@ -51,6 +74,9 @@ func (k *clerk) practice() error {
 		return misuse("clerk_branch_has_all", "value", "-product")
 	case folder != "":
 		return k.practiceBranch(folder)
+	}
+	if err := ending(k.files[0], ".xlsx"); err != nil {
+		return err
 	}
 	cards, err := practice.Scorecards()
 	if err != nil {
