@@ -250,3 +250,35 @@ func (item *Item) options() string {
 	}
 	return text
 }
+
+// averages warns where the shares of past loans, given for every attribute of
+// a scored characteristic without a slope, do not add up to one, or give
+// another average of log-odds than the workbook says: reasons are told from
+// that average.
+func (c *compiler) averages() {
+	for i := range c.e.items {
+		item := &c.e.items[i]
+		if item.Use != Scored || item.slope.Digits != 0 || len(item.Attributes) == 0 {
+			continue
+		}
+		shares, sum := Rate(0), 0.0
+		for n, a := range item.Attributes {
+			if !a.Share.Set {
+				shares = -1
+				break
+			}
+			shares += a.Share.Value
+			sum += float64(a.Share.Value.Float() * item.weights[n].Float())
+		}
+		const slack = 0.005 // shares are often given to three places
+		switch average := item.AverageLogOdds.Or(0); {
+		case shares < 0:
+		case math.Abs(shares.Float()-1) > slack:
+			c.warn(Problem{Code: "shares_not_one", Place: at("Characteristics", c.row(item), "Characteristic"),
+				Args: Args{"value": item.Code, "sum": shares.String()}})
+		case math.Abs(average.Float()-sum) > slack*(1+math.Abs(sum)):
+			c.warn(Problem{Code: "average_differs", Place: at("Characteristics", c.row(item), "Average log-odds"),
+				Args: Args{"value": average.String(), "expected": LogOdds(math.Round(sum * 1e9)).String()}})
+		}
+	}
+}

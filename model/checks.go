@@ -20,7 +20,7 @@ func (c *compiler) checks() {
 		if good {
 			result, _ := c.e.Score(a)
 			used.note(a, result)
-			c.compare(i, check, result)
+			c.compare(i, check, a, result)
 		}
 	}
 	if complete { // else what is unused cannot be known yet
@@ -76,12 +76,16 @@ const (
 	scoreTolerance   = One / 2
 )
 
-func (c *compiler) compare(i int, check Check, r Result) {
+// compare lists where a check is not reproduced. Where the log-odds differ, PD,
+// score, band and recommendation only follow from that and are passed over.
+func (c *compiler) compare(i int, check Check, a *Answers, r Result) {
+	if d := check.LogOdds - r.LogOdds; d > logOddsTolerance || d < -logOddsTolerance {
+		c.add(Problem{Code: "check_log_odds_differ", Place: at("Checks", i+1, "Log-odds"), Args: Args{"check": check.Code,
+			"value": check.LogOdds.String(), "ours": r.LogOdds.String(), "difference": (-d).String(), "suspect": suspect(a, d)}})
+		return
+	}
 	differs := func(column, said, ours string) {
 		c.add(Problem{Code: "check_differs", Place: at("Checks", i+1, column), Args: Args{"check": check.Code, "value": said, "ours": ours}})
-	}
-	if d := check.LogOdds - r.LogOdds; d > logOddsTolerance || d < -logOddsTolerance {
-		differs("Log-odds", check.LogOdds.String(), r.LogOdds.String())
 	}
 	if d := check.PD - r.PD; d > pdTolerance || d < -pdTolerance {
 		differs("PD", check.PD.String(), r.PD.String())
@@ -95,6 +99,33 @@ func (c *compiler) compare(i int, check Check, r Result) {
 	if r.Recommendation != check.Recommendation {
 		differs("Recommendation", string(check.Recommendation), string(r.Recommendation))
 	}
+}
+
+// suspect names the coefficient whose sign, turned round, would explain what a
+// check says less what we find; empty where there is none.
+func suspect(a *Answers, difference LogOdds) string {
+	e := a.edition
+	explains := func(weight LogOdds) bool {
+		d := difference + 2*weight
+		return weight != 0 && -logOddsTolerance <= d && d <= logOddsTolerance
+	}
+	if explains(e.card.Card.BaseLogOdds) {
+		return Base
+	}
+	v, _ := a.whole()
+	for i := range e.items {
+		item, x := &e.items[i], &v[i]
+		if item.Use != Scored {
+			continue
+		}
+		if x.attr >= 0 && explains(item.weights[x.attr]) {
+			return item.Code + "." + item.Attributes[x.attr].Code
+		}
+		if x.state == Given && item.slope.Digits != 0 && explains(item.slope.At(item.clamp(x.n))) {
+			return item.Code
+		}
+	}
+	return ""
 }
 
 // usage notes which attributes, slopes, rules and bands the checks use.

@@ -67,7 +67,7 @@ func (c *compiler) parts(item *Item, f Formula, row int) {
 		least = 2
 	case Ratio:
 		least, most = 2, 2
-	case Instalment:
+	case Instalment, MonthlyInstalment:
 		least, most = 0, 0
 	case WholeYears, AgeAtLastPayment:
 		most = 1
@@ -78,7 +78,7 @@ func (c *compiler) parts(item *Item, f Formula, row int) {
 	}
 	// What the operation takes by itself are parts too.
 	switch f.Operation {
-	case Instalment:
+	case Instalment, MonthlyInstalment:
 		item.parts = []part{{c.e.byCode[Amount], false}, {c.e.byCode[Term], false}}
 	case AgeAtLastPayment:
 		item.parts = append(item.parts, part{c.e.byCode[Term], false})
@@ -168,6 +168,8 @@ func (e *Edition) compute(item *Item, a *Answers) value {
 		n = v[item.parts[0].index].n.Over(divisor, int(item.Decimals))
 	case Instalment:
 		n = e.instalment(v[item.parts[0].index].n, v[item.parts[1].index].n).Round(int(item.Decimals))
+	case MonthlyInstalment:
+		n = e.aMonth(e.instalment(v[item.parts[0].index].n, v[item.parts[1].index].n), int(item.Decimals))
 	case WholeYears:
 		n = years(a.On, a.given[item.parts[0].index].Date)
 	case AgeAtLastPayment:
@@ -209,6 +211,36 @@ func (c *compiler) findStates() {
 	}
 }
 
+// isPayment tells an instalment of either kind.
+func (item *Item) isPayment() bool {
+	return item.Operation == Instalment || item.Operation == MonthlyInstalment
+}
+
+// monthlyMoney refuses to set a payment that falls due every week or
+// fortnight against a month's money.
+func (c *compiler) monthlyMoney() {
+	if unit := c.s.Terms.TermUnit; unit != Weeks && unit != Fortnights {
+		return
+	}
+	for i, f := range c.s.Computed {
+		item := c.item(f.Characteristic)
+		if item == nil || f.Operation != Ratio || len(item.parts) != 2 || !slices.Contains(c.e.order, item.Index) {
+			continue
+		}
+		payment, left := &c.e.items[item.parts[0].index], &c.e.items[item.parts[1].index]
+		if payment.Operation == Instalment && c.isMonthly(left) {
+			c.add(Problem{Code: "instalment_not_monthly", Place: at("Computed", i+1, "Part 1"),
+				Args: Args{"value": payment.Code, "against": left.Code, "expected": string(MonthlyInstalment)}})
+		}
+	}
+}
+
+// isMonthly tells what is, or is summed from, a worksheet's monthly money.
+func (c *compiler) isMonthly(item *Item) bool {
+	return item.Kind == Worksheet || item.Operation == Sum &&
+		slices.ContainsFunc(item.parts, func(p part) bool { return c.isMonthly(&c.e.items[p.index]) })
+}
+
 // Parts are the indexes of what a computed item is worked out from.
 func (item *Item) Parts() []int {
 	var list []int
@@ -223,7 +255,7 @@ func (item *Item) Parts() []int {
 // indexes; ok is false where the edition has none.
 func (e *Edition) PaymentShare() (share, payment, left int, ok bool) {
 	share = slices.IndexFunc(e.items, func(item Item) bool {
-		return item.Operation == Ratio && e.items[item.parts[0].index].Operation == Instalment
+		return item.Operation == Ratio && e.items[item.parts[0].index].isPayment()
 	})
 	if share < 0 {
 		return 0, 0, 0, false

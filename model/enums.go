@@ -145,17 +145,20 @@ func (p Period) TimesAYear() int64 {
 type Operation string
 
 const (
-	Sum              Operation = "sum"
-	Product          Operation = "product"
-	Ratio            Operation = "ratio"
-	Instalment       Operation = "instalment"
-	WholeYears       Operation = "whole years"
-	AgeAtLastPayment Operation = "age at last payment"
+	Sum        Operation = "sum"
+	Product    Operation = "product"
+	Ratio      Operation = "ratio"
+	Instalment Operation = "instalment"
+	// MonthlyInstalment is what the payments of a month come to, by the rule of
+	// Period.TimesAYear, for setting beside a month's money.
+	MonthlyInstalment Operation = "monthly instalment"
+	WholeYears        Operation = "whole years"
+	AgeAtLastPayment  Operation = "age at last payment"
 )
 
 // Options lists the operations.
 func (Operation) Options() []string {
-	return []string{"sum", "product", "ratio", "instalment", "whole years", "age at last payment"}
+	return []string{"sum", "product", "ratio", "instalment", "monthly instalment", "whole years", "age at last payment"}
 }
 
 // Sign is the sign of a part of a sum.

@@ -127,7 +127,7 @@ func ExampleCompile() {
 	// Output:
 	// edition 1 0 problems
 	// Attributes row 2 (From): band_gap expected="3" value="4"
-	// Checks row 2 (Log-odds): check_differs check="bad" ours="-1.7" value="-1.3"
+	// Checks row 2 (Log-odds): check_log_odds_differ check="bad" difference="-0.4" ours="-1.7" suspect="own_stall.no" value="-1.3"
 }
 
 // What an edition says of complete answers.

@@ -79,3 +79,20 @@ func TestNoTermsFit(t *testing.T) {
 		t.Errorf("offers with an answer missing: %+v", offers)
 	}
 }
+
+// A payment of 76.50 each fortnight is 26 of them over 12 months: 165.75 a
+// month (arithmetic). Set against 900 left each month it is a share of 0.184,
+// not the 0.085 of a single payment.
+func TestMonthlyInstalment(t *testing.T) {
+	for unit, want := range map[TermUnit]string{Weeks: "331.5", Fortnights: "165.75", Months: "76.5"} {
+		e := &Edition{card: Scorecard{Terms: Terms{TermUnit: unit}}}
+		payment, _ := ParseNumber("76.5")
+		got := e.aMonth(payment, 2)
+		if got.String() != want {
+			t.Errorf("%s: %s, want %s", unit, got, want)
+		}
+		if share := got.Over(Whole(900), 3); unit == Fortnights && share.String() != "0.184" {
+			t.Errorf("share %s, want 0.184", share)
+		}
+	}
+}

@@ -195,6 +195,9 @@ func (e *Edition) spreadComputed(item *Item, a *Answers, p *possibles) {
 	case Instalment:
 		lo, hi := e.instalmentRange(p, parts[0].index, parts[1].index)
 		out.lo, out.hi = lo.Round(decimals), hi.Round(decimals)
+	case MonthlyInstalment:
+		lo, hi := e.instalmentRange(p, parts[0].index, parts[1].index)
+		out.lo, out.hi = e.aMonth(lo, decimals), e.aMonth(hi, decimals)
 	case WholeYears:
 		born := &p.of[parts[0].index]
 		out.lo, out.hi = years(a.On, born.until), years(a.On, born.from)

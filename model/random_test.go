@@ -173,7 +173,7 @@ func (d *drawing) computed() {
 	for i := range rapid.IntRange(0, 5).Draw(d.T, "computed") {
 		c := Characteristic{Code: fmt.Sprintf("c%d", i), Question: "Computed", Kind: Computed, LawfulGround: "tested",
 			Use: rapid.SampledFrom([]Use{Scored, Recorded}).Draw(d.T, "use"), Decimals: Count(rapid.SampledFrom([]int{0, 3, 6}).Draw(d.T, "decimals"))}
-		f := Formula{Characteristic: c.Code, Operation: rapid.SampledFrom([]Operation{Sum, Product, Ratio, Ratio, Instalment, WholeYears, AgeAtLastPayment}).Draw(d.T, "operation")}
+		f := Formula{Characteristic: c.Code, Operation: rapid.SampledFrom([]Operation{Sum, Product, Ratio, Ratio, Instalment, MonthlyInstalment, WholeYears, AgeAtLastPayment}).Draw(d.T, "operation")}
 		usable := d.where(func(c Characteristic) bool { return c.Kind == Numeric || c.Kind == Worksheet || c.Kind == Computed })
 		count := 0
 		switch f.Operation {
@@ -199,6 +199,15 @@ func (d *drawing) computed() {
 		// A formula may stand before its parts.
 		at := rapid.IntRange(0, len(d.s.Characteristics)).Draw(d.T, "place")
 		d.s.Characteristics = slices.Insert(d.s.Characteristics, at, c)
+	}
+	// A payment that is not due every month has no ratio to a month's money.
+	for _, f := range d.s.Computed {
+		for i := range d.s.Computed {
+			g := &d.s.Computed[i]
+			if f.Operation == Ratio && g.Operation == Instalment && g.Characteristic == f.Parts[0].Code && d.s.Terms.TermUnit != Months {
+				g.Operation = MonthlyInstalment
+			}
+		}
 	}
 	slices.Reverse(d.s.Computed)
 }
@@ -403,6 +412,10 @@ func drawAnswer(t *rapid.T, item *Item) Answer {
 		}
 	default:
 		x.Number = numberOf(t, int(item.Decimals))
+		if len(item.floors) > 0 && rapid.Bool().Draw(t, "near a band") {
+			floor := max(rapid.SampledFrom(item.floors).Draw(t, "floor"), -Largest)
+			x.Number = floor.Minus(Number(rapid.IntRange(0, 1).Draw(t, "under") * int(pow10[MostDecimals-int(item.Decimals)]))).Round(int(item.Decimals))
+		}
 		if item.Code == Amount && rapid.Bool().Draw(t, "lendable") {
 			x.Number = Whole(rapid.Int64Range(1, 50).Draw(t, "hundreds") * 100)
 		}

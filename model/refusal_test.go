@@ -133,6 +133,9 @@ var refusals = []struct{ changes, code, place string }{
 	{"Characteristics/payment/Decimals: 7", "more_than", "Characteristics/payment/Decimals"},
 	{"+Characteristics: amount | How much? | number | 3 | | | | | | | recorded", "more_than", "Characteristics/amount/Decimals"},
 	{"+Characteristics: term | How long? | number | 1 | | | | | | | recorded", "more_than", "Characteristics/term/Decimals"},
+	{"#Attributes/Standard error: Share of past loans", "shares_not_one", "Characteristics/share/Characteristic"},
+	{"#Attributes/Standard error: Share of past loans; Attributes/share.low/Share of past loans: 0.3", "average_differs", "Characteristics/share/Average log-odds"},
+	{"Terms/Term counted in: weeks", "instalment_not_monthly", "Computed/share/Part 1"},
 	{"Characteristics/trade/Average log-odds:", "average_missing", "Characteristics/trade/Average log-odds"},
 	{"Characteristics/born/Use: scored", "date_scored", "Characteristics/born/Use"},
 	{"+Characteristics: amount | How much? | choice | | | | | | | | recorded", "reserved_misused", "Characteristics/amount/Kind"},
@@ -291,7 +294,7 @@ var refusals = []struct{ changes, code, place string }{
 	// checks.go, and answers.go and worksheet.go by way of it
 	{"-Checks", "no_checks", "Checks"},
 	{"Checks/two/Check: one", "repeated_code", "Checks/2/Check"},
-	{"Checks/one/Log-odds: -2.352498", "check_differs", "Checks/one/Log-odds"},
+	{"Checks/one/Log-odds: -2.352498", "check_log_odds_differ", "Checks/one/Log-odds"},
 	{"Checks/one/PD: 0.08687", "check_differs", "Checks/one/PD"},
 	{"Checks/one/Score: 555.6", "check_differs", "Checks/one/Score"},
 	{"Checks/one/Band: b", "check_differs", "Checks/one/Band"},
@@ -402,7 +405,7 @@ func TestEveryProblemIsProvoked(t *testing.T) {
 	}
 }
 
-var warnings = []string{"nothing_left_not_riskiest", "rate_above_one", "unknown_sheet", "unknown_column", "unknown_item"}
+var warnings = []string{"nothing_left_not_riskiest", "rate_above_one", "unknown_sheet", "unknown_column", "unknown_item", "shares_not_one", "average_differs"}
 
 // answerProblems provokes what is no matter of one sheet's cell: problems of
 // whole sheets, of canonical texts and of answers.

@@ -141,6 +141,18 @@ func (e *Edition) instalment(amount, term Number) Number {
 	return e.money(payment)
 }
 
+// aMonth is what payments of that amount come to in a month, rounded once.
+func (e *Edition) aMonth(payment Number, decimals int) Number {
+	times := Month.TimesAYear()
+	switch e.card.Terms.TermUnit {
+	case Weeks:
+		times = Week.TimesAYear()
+	case Fortnights:
+		times = Fortnight.TimesAYear()
+	}
+	return payment.Times(Whole(times), MostDecimals).Over(Whole(12), decimals)
+}
+
 // instalmentRange is the range of an instalment over the amounts and terms
 // that are still possible. Of an open amount it is all there is: an amount
 // need not even leave anything to pay out. For a known one it tries every

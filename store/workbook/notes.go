@@ -82,7 +82,7 @@ var notes = map[string]map[string]string{
 	},
 	"Computed": {
 		"Characteristic": "The code of a characteristic of kind computed.",
-		"Operation":      "sum; product; ratio (part 1 over part 2); instalment (from amount and term); whole years since a date; age at last payment.",
+		"Operation":      "sum; product; ratio (part 1 over part 2); instalment (one payment, from amount and term); monthly instalment (the payments of a month, for a ratio to monthly money); whole years since a date; age at last payment.",
 		"Sign":           "plus or minus, for a part of a sum. Blank is plus.",
 		"Part":           "The code of a number, worksheet, computed answer or date.",
 	},

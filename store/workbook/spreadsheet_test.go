@@ -226,6 +226,15 @@ func TestTryItPayments(t *testing.T) {
 				s.Attributes[i].Below = model.Maybe[model.Number]{}
 			}
 		}
+		// Set against a month's money, the payment must be a month's.
+		s.Characteristics = append(s.Characteristics, model.Characteristic{Code: "payment_a_month", Question: "Payments of a month",
+			Kind: model.Computed, Decimals: 2, Use: model.Recorded})
+		for i := range s.Computed {
+			if f := &s.Computed[i]; f.Operation == model.Ratio && f.Parts[0].Code == "payment" {
+				f.Parts[0].Code = "payment_a_month"
+			}
+		}
+		s.Computed = append(s.Computed, model.Formula{Characteristic: "payment_a_month", Operation: model.MonthlyInstalment})
 		e := corrected(t, &s)
 		files, editions = append(files, written(t, s)), append(editions, e)
 	}
@@ -245,9 +254,22 @@ func TestTryItPayments(t *testing.T) {
 // corrected makes every check say what the scorecard gives.
 func corrected(t *testing.T, s *model.Scorecard) *model.Edition {
 	t.Helper()
+	// Log-odds first, then what follows from them.
+	for range 2 {
+		_, problems := model.Compile(*s)
+		correct(t, s, problems)
+	}
 	e, problems := model.Compile(*s)
+	if e == nil {
+		t.Fatal(problems)
+	}
+	return e
+}
+
+func correct(t *testing.T, s *model.Scorecard, problems []model.Problem) {
+	t.Helper()
 	for _, p := range problems {
-		if p.Code != "check_differs" {
+		if p.Code != "check_differs" && p.Code != "check_log_odds_differ" {
 			continue
 		}
 		c := &s.Checks[p.Place.Row-1]
@@ -268,8 +290,4 @@ func corrected(t *testing.T, s *model.Scorecard) *model.Edition {
 			t.Fatal(err)
 		}
 	}
-	if e, problems = model.Compile(*s); e == nil {
-		t.Fatal(problems)
-	}
-	return e
 }

@@ -265,6 +265,9 @@ func (t *trySheet) computed(item *model.Item, r int) {
 	case model.Instalment:
 		parts = []string{t.value(model.Amount), t.value(model.Term)}
 		number = round(resultRef(tryPayment))
+	case model.MonthlyInstalment:
+		parts = []string{t.value(model.Amount), t.value(model.Term)}
+		number = round(fmt.Sprintf(`%[1]s*IF(%[2]s="weeks",52,IF(%[2]s="fortnights",26,12))/12`, resultRef(tryPayment), t.fact("Terms", "Term counted in")))
 	case model.WholeYears:
 		number = wholeYears(on, parts[0])
 	case model.AgeAtLastPayment:
@@ -330,7 +333,7 @@ func (t *trySheet) results() {
 	complete(tryBand, "Band", "INDEX(%s,%s)", t.span("Bands", "Band", 1), bandRow)
 	complete(tryRecommendation, "Recommendation before rules", "INDEX(%s,%s)", t.span("Bands", "Recommendation", 1), bandRow)
 	if slices.ContainsFunc(t.s.Computed, func(f model.Formula) bool {
-		return f.Operation == model.Instalment || f.Operation == model.AgeAtLastPayment
+		return f.Operation == model.Instalment || f.Operation == model.MonthlyInstalment || f.Operation == model.AgeAtLastPayment
 	}) {
 		t.payment(line)
 	}
