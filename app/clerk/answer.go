@@ -121,10 +121,9 @@ func (q *interview) result() {
 			say(fmt.Sprintf("%s%d. %s", indent, i+1, reason))
 		}
 	}
-	ground := slices.Concat(q.edition.Check(q.answers), q.edition.Ground(q.answers, q.today))
-	if len(ground) > 0 {
+	if list := slices.Concat(q.edition.Check(q.answers), ground(q.edition, q.answers)); len(list) > 0 {
 		head("clerk.ground")
-		for _, p := range ground {
+		for _, p := range list {
 			text := q.words.Sentence(p)
 			if item, ok := q.edition.Item(p.Place.Column); ok {
 				text = q.question(item) + " " + text

@@ -4,8 +4,9 @@
 //
 //	CGO_ENABLED=0 go build ./app/clerk
 //
-// It exits with 0 when all is well, 1 when something was refused or could not
-// be done, and 2 when it was used wrongly. What it is asked for goes to
+// It exits with 0 when it did what it was asked, some rows refused or not, 1
+// when something was refused or could not be done, and 2 when it was used
+// wrongly. What it is asked for goes to
 // standard output, what is wrong to standard error.
 package main
 

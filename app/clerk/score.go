@@ -48,11 +48,12 @@ func (k *clerk) score() error {
 		return cannot(err)
 	}
 	columns, problems := table.ColumnsOf(edition, rows.Header())
-	problems = append(problems, edition.Ground(edition.NewAnswers(on, ""), k.today)...)
-	for _, p := range problems {
-		if p.Warning {
+	for _, p := range append(problems, edition.Ground(edition.NewAnswers(on, ""), on)...) {
+		switch {
+		case ofDay(p): // told of each row: rows have days of their own
+		case p.Warning:
 			k.note(p)
-		} else {
+		default:
 			fmt.Fprintln(k.err, k.words.Problem(p))
 		}
 	}
@@ -67,7 +68,7 @@ func (k *clerk) score() error {
 	if client == "" {
 		client = model.NewClients
 	}
-	s := &scorer{edition: edition, columns: columns, words: k.words, labels: words.LabelsOf(edition, k.words.Style().Language), rules: edition.Rules(), on: on, client: client, today: k.today}
+	s := &scorer{edition: edition, columns: columns, words: k.words, labels: words.LabelsOf(edition, k.words.Style().Language), rules: edition.Rules(), on: on, client: client}
 	bar := k.progress()
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM) // to take away what is half written
 	defer stop()
@@ -88,13 +89,13 @@ func (k *clerk) score() error {
 
 // A scorer turns rows into rows of results. Several goroutines use it at once.
 type scorer struct {
-	edition   *model.Edition
-	columns   *table.Columns
-	words     *words.Reader
-	labels    *words.Labels
-	rules     []model.PolicyRule
-	on, today model.Date
-	client    model.ClientKind
+	edition *model.Edition
+	columns *table.Columns
+	words   *words.Reader
+	labels  *words.Labels
+	rules   []model.PolicyRule
+	on      model.Date
+	client  model.ClientKind
 }
 
 // A batch is some rows on their way from the reader through a worker to the
@@ -201,8 +202,8 @@ func (s *scorer) row(row table.Row) (cells []string, scored bool) {
 				p.Place = model.Place{Sheet: "Answers", Column: model.Amount}
 				a.Problems = append(a.Problems, p)
 			}
-			for _, p := range s.edition.Ground(a.Answers, s.today) {
-				if p.Place.Column != "" { // the others are told once, of all
+			for _, p := range ground(s.edition, a.Answers) {
+				if p.Place.Column != "" || ofDay(p) { // the others are told once, of all
 					a.Problems = append(a.Problems, p)
 				}
 			}
@@ -215,6 +216,20 @@ func (s *scorer) row(row table.Row) (cells []string, scored bool) {
 	cells[len(cells)-1] = strings.Join(sentences, " ")
 	return cells, scored
 }
+
+// ground lists what is to be borne in mind of an estimate on its day.
+func ground(e *model.Edition, a *model.Answers) []model.Problem {
+	list := e.Ground(a, a.On)
+	if from := e.Scorecard().Card.InForceFrom; a.On.Before(from) {
+		p := problem("not_yet_in_force", "value", a.On.String(), "from", from.String())
+		p.Warning = true
+		list = append(list, p)
+	}
+	return list
+}
+
+// ofDay tells a problem of the day of an application.
+func ofDay(p model.Problem) bool { return p.Code == "past_review" || p.Code == "not_yet_in_force" }
 
 // overCap is the most that the rules allow, where more is asked for.
 func overCap(a *model.Answers, r model.Result) (most model.Number, over bool) {

@@ -182,7 +182,7 @@ func scorerOf(t testing.TB, e *model.Edition, header []string) *scorer {
 		t.Fatal("no columns")
 	}
 	day := model.Date{Year: 2026, Month: 3, Day: 2}
-	return &scorer{edition: e, columns: columns, words: words.New(words.Style{}), labels: words.LabelsOf(e, "en"), rules: e.Rules(), on: day, client: model.NewClients, today: day}
+	return &scorer{edition: e, columns: columns, words: words.New(words.Style{}), labels: words.LabelsOf(e, "en"), rules: e.Rules(), on: day, client: model.NewClients}
 }
 
 // What clerk writes of any applicant is what model says.
@@ -240,6 +240,28 @@ func TestOverCap(t *testing.T) {
 		cells, scored := s.row(table.Row{Number: 1, Cells: []string{amount, "12", "own", "no", "2015", "0", "900"}})
 		if got := cells[len(cells)-1]; !scored || cells[8] != "no_stall" || got != want {
 			t.Errorf("%s: %q", amount, cells)
+		}
+	}
+}
+
+// Of each row is said what its own day calls for, whatever day it is now.
+func TestRowsOwnDay(t *testing.T) {
+	card := stallCard(t)
+	e, _ := model.Compile(card)
+	s := scorerOf(t, e, []string{"on", "amount", "term", "home", "has_stall", "stall_years", "opened", "late_days", "household"})
+	from, review := card.Card.InForceFrom, card.Card.ReviewBy
+	for _, c := range []struct {
+		on   model.Date
+		want string
+	}{
+		{from.AddDays(-1), "The scorecard is in force only from 1 Feb 2026, after the day of this application, 31 Jan 2026."},
+		{from, ""},
+		{review, ""},
+		{review.AddDays(1), english.Problem(model.Problem{Code: "past_review", Args: model.Args{"value": review.String()}})},
+	} {
+		cells, scored := s.row(table.Row{Number: 1, Cells: []string{c.on.String(), "1000", "12", "own", "yes", "7.5", "2015", "0", "900"}})
+		if got := cells[len(cells)-1]; !scored || got != c.want {
+			t.Errorf("%s: %q", c.on, cells)
 		}
 	}
 }
