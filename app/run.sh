@@ -9,6 +9,7 @@ if [ -z "${DISPLAY:-}${WAYLAND_DISPLAY:-}" ]; then
   say "There is no display here, so the window cannot open. The same work in the terminal:"
   mkdir -p .bin
   CGO_ENABLED=0 go build -o .bin/clerk ./app/clerk
+  rm -f .bin/practice.xlsx # of an older program, which clerk would leave as it is
   .bin/clerk practice .bin/practice.xlsx
   exec .bin/clerk ask -card .bin/practice.xlsx
 fi

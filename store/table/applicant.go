@@ -148,8 +148,11 @@ func (c *Columns) answer(q *question, cells []string) (a model.Answer, column st
 	switch lower := strings.ToLower(text); {
 	case lower == model.Unknown, lower == model.NotApplicable, !numeric:
 		a, err = c.edition.ParseAnswer(q.item.Index, lower)
-		if p, _ := err.(model.Problem); p.Code == "not_a_date" {
+		switch p, _ := err.(model.Problem); p.Code {
+		case "not_a_date":
 			err = problem("file_not_a_date", "value", text)
+		case "unknown_not_allowed":
+			err = problem("file_unknown_not_allowed", "value", text)
 		}
 	default:
 		a.State = model.Given

@@ -91,7 +91,7 @@ func TestApplicantProblems(t *testing.T) {
 		{"home", "ow\u202en", "home:unknown_attribute"},
 		{"has_stall", "", "has_stall:file_answer_missing"},
 		{"has_stall", "true", "has_stall:unknown_attribute"},
-		{"has_stall", "unknown", "has_stall:unknown_not_allowed"},
+		{"has_stall", "unknown", "has_stall:file_unknown_not_allowed"},
 		{"stall_years", "not_applicable", "stall_years:file_answer_missing"},
 		{"opened", "01/05/2019", "opened:file_not_a_date"},
 		{"opened", "2019-02-30", "opened:file_not_a_date"},
