@@ -106,12 +106,13 @@ func BenchmarkChangedAnswer(b *testing.B) {
 			settle(canvas.Content())
 		})
 	}
-	digits := func(i int) { // adds a digit, and takes it away
-		if i%2 == 0 {
-			typeText(canvas, "0")
-		} else {
-			press(canvas, string(fyne.KeyBackspace))
+	digits := func(i int) { // figures of up to four digits, hardly any twice
+		if i%4 == 0 {
+			for range 4 {
+				press(canvas, string(fyne.KeyBackspace))
+			}
 		}
+		typeText(canvas, string('1'+rune(i*7/4+i)%9))
 	}
 	run("yes or no", "books", func(i int) { typeText(canvas, "ny"[i%2:i%2+1]) })
 	run("yes or no that asks another", "borrowed_before", func(i int) { typeText(canvas, "ny"[i%2:i%2+1]) })
@@ -135,7 +136,7 @@ func BenchmarkPage(b *testing.B) {
 // The list of 200,000 kept results, the size that the promises are for.
 func BenchmarkKeptLarge(b *testing.B) {
 	folder := b.TempDir()
-	fill(b, folder, 200_000)
+	Fill(b, folder, 200_000)
 	d := deskOn(b, folder)
 	canvas := d.window.Canvas()
 	bench(b, "opened", func(int) {
@@ -153,9 +154,9 @@ func BenchmarkKeptLarge(b *testing.B) {
 	})
 }
 
-// fill makes a practice branch in a folder and keeps its past applications
+// Fill makes a practice branch in a folder and keeps its past applications
 // over and over, until there are that many results.
-func fill(tb testing.TB, folder string, results int) {
+func Fill(tb testing.TB, folder string, results int) {
 	tb.Helper()
 	session, err := practice.Open(context.Background(), folder)
 	if err != nil {

@@ -114,7 +114,9 @@ func (d *Desk) begin(session *store.Session, o Options) {
 	}
 	d.reader = words.New(words.StyleOf(language))
 	d.dark = d.remembered("light") == "dark"
-	d.app.Settings().SetTheme(look{d.dark})
+	if set := d.app.Settings(); set.Theme() != fyne.Theme(look{d.dark}) {
+		set.SetTheme(look{d.dark}) // which loads the fonts anew
+	}
 	d.window.SetCloseIntercept(d.close)
 	if w, h := d.remembered("width"), d.remembered("height"); w != "" && h != "" {
 		d.window.Resize(fyne.NewSize(length(w, smallest.Width), length(h, smallest.Height)))

@@ -1,8 +1,6 @@
 package desk
 
 import (
-	"strings"
-
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/theme"
@@ -82,30 +80,3 @@ func (r *noteRenderer) Layout(size fyne.Size) {
 func (r *noteRenderer) Refresh() { r.Layout(r.note.Size()) }
 
 func lineHeight(size float32) float32 { return fyne.MeasureText("M", size, fyne.TextStyle{}).Height }
-
-// wrap breaks a text into exactly that many lines of at most that width,
-// between words where it can; what does not fit ends in an ellipsis, and what
-// is not needed is empty.
-func wrap(text string, width, size float32, style fyne.TextStyle, lines int) []string {
-	out := make([]string, lines)
-	for i := range out {
-		if i == lines-1 || fyne.MeasureText(text, size, style).Width <= width {
-			out[i] = shorten(text, width, size, style)
-			break
-		}
-		cut := 0
-		for at, c := range text {
-			if c == ' ' {
-				if fyne.MeasureText(text[:at], size, style).Width > width {
-					break
-				}
-				cut = at
-			}
-		}
-		if cut == 0 {
-			cut = len(strings.TrimSuffix(shorten(text, width, size, style), "…"))
-		}
-		out[i], text = text[:cut], strings.TrimPrefix(text[cut:], " ")
-	}
-	return out
-}

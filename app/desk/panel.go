@@ -24,30 +24,64 @@ type panel struct {
 	answered *canvas.Text
 	mark     *mark
 	verdict  *canvas.Text
-	firmness *widget.Label
-	odds     *widget.Label // PD in words, or its bounds
-	figures  *canvas.Text  // PD, score, band
-	decider  *widget.Label
-	payment  *widget.Label
-	rules    *widget.Label
-	problem  *widget.Label // why nothing is saved
+	firmness *prose
+	odds     *prose       // PD in words, or its bounds
+	figures  *canvas.Text // PD, score, band
+	payment  *prose
+	decider  *prose
+	rules    *prose
+	problem  *prose              // why nothing is saved
+	below    []fyne.CanvasObject // all those beneath the verdict
+	body     *fyne.Container
+	height   float32 // the most that the body has needed
 	object   fyne.CanvasObject
 }
 
 func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caution fyne.CanvasObject) *panel {
+	text := func(colour fyne.ThemeColorName) *prose { return newProse(theme.TextSize(), colour) }
 	p := &panel{reader: reader, labels: labels, edition: e,
-		answered: figure(theme.TextSize(), false), mark: newMark(44), verdict: figure(theme.TextHeadingSize(), true),
-		firmness: paragraph(""), odds: paragraph(""), figures: figure(theme.TextSize(), false),
-		decider: paragraph(""), payment: paragraph(""), rules: paragraph(""), problem: paragraph("")}
-	p.firmness.SizeName, p.firmness.Importance = theme.SizeNameCaptionText, widget.LowImportance
-	p.rules.Importance, p.problem.Importance = widget.WarningImportance, widget.DangerImportance
-	top := container.NewHBox(p.mark, container.NewCenter(p.verdict))
-	body := container.NewVBox(inset(container.NewVBox(p.answered, top)), p.firmness, p.odds, inset(p.figures),
-		widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem)
+		answered: figure(theme.TextSize(), false), mark: newMark(markSide), verdict: figure(theme.TextHeadingSize(), true),
+		firmness: newProse(theme.CaptionTextSize(), colorQuiet), odds: text(theme.ColorNameForeground),
+		figures: figure(theme.TextSize(), false), decider: text(theme.ColorNameForeground), payment: text(theme.ColorNameForeground),
+		rules: text(theme.ColorNameWarning), problem: text(theme.ColorNameError)}
+	p.below = []fyne.CanvasObject{p.firmness, p.odds, p.figures, widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem}
+	p.body = container.New(p, append([]fyne.CanvasObject{p.answered, p.mark, p.verdict}, p.below...)...)
 	ground := canvas.NewRectangle(shade(colorRaised))
 	p.object = container.NewStack(ground, container.NewBorder(nil,
-		container.NewVBox(widget.NewSeparator(), caution), nil, nil, container.NewVScroll(body)))
+		container.NewVBox(widget.NewSeparator(), caution), nil, nil, container.NewVScroll(p.body)))
 	return p
+}
+
+const (
+	panelEdge = 8
+	panelGap  = 8
+	markSide  = 44
+)
+
+// MinSize is as high as it ever was, and the parts are put in their places at
+// once: the window draws a second frame where it finds that they are not.
+func (p *panel) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(1, p.height) }
+
+// Layout stacks the parts, the verdict beside its mark. A part that says
+// nothing takes no room.
+func (p *panel) Layout(_ []fyne.CanvasObject, size fyne.Size) {
+	width, y := size.Width-2*panelEdge, float32(panelEdge)
+	place(p.answered, panelEdge, y, width, lineHeight(p.answered.TextSize))
+	y += lineHeight(p.answered.TextSize) + panelGap
+	place(p.mark, panelEdge, y, markSide, markSide)
+	high := lineHeight(p.verdict.TextSize)
+	place(p.verdict, panelEdge+markSide+panelGap, y+(markSide-high)/2, width-markSide-panelGap, high)
+	y += markSide
+	for _, o := range p.below {
+		o.Resize(fyne.NewSize(width, o.Size().Height)) // a text that wraps knows its height only then
+		h := o.MinSize().Height
+		if h > 0 {
+			y += panelGap
+		}
+		place(o, panelEdge, y, width, h)
+		y += h
+	}
+	p.height = max(p.height, y+panelEdge)
 }
 
 // show brings every figure up to date.
@@ -64,13 +98,14 @@ func (p *panel) show(iv *interview) {
 	default:
 		setFigure(p.verdict, p.reader.T("desk.open"), colorQuiet)
 	}
-	setParagraph(p.firmness, p.firm(iv, settled))
-	setParagraph(p.odds, p.oddsWords(iv))
+	p.firmness.say(p.firm(iv, settled))
+	p.odds.say(p.oddsWords(iv))
 	setFigure(p.figures, p.figureWords(iv), theme.ColorNameForeground)
-	setParagraph(p.decider, p.deciderWords(iv))
-	setParagraph(p.payment, p.paymentWords(iv))
-	setParagraph(p.rules, p.ruleWords(iv))
-	setParagraph(p.problem, iv.saveProblem)
+	p.decider.say(p.deciderWords(iv))
+	p.payment.say(p.paymentWords(iv))
+	p.rules.say(p.ruleWords(iv))
+	p.problem.say(iv.saveProblem)
+	p.Layout(nil, p.body.Size())
 }
 
 // firm tells how firmly the recommendation stands.

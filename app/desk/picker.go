@@ -366,7 +366,6 @@ func (r *faceRenderer) Layout(size fyne.Size) {
 		t.Text, t.TextSize, t.Color = parts[i], textSize, colour
 		t.Move(fyne.NewPos(pad, top+height*float32(i)))
 		t.Resize(fyne.NewSize(width, height))
-		t.Refresh()
 	}
 	x, y := size.Width-arrowRoom/2-4, size.Height/2
 	for i, l := range r.arrow {

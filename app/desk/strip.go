@@ -17,19 +17,41 @@ type strip struct {
 	labels                               *words.Labels
 	who, product, amount, payment, saved *canvas.Text
 	hidden                               bool // the person is out of sight
-	object                               fyne.CanvasObject
+	ground                               *canvas.Rectangle
+	row                                  *fyne.Container
+	rest                                 *container.Clip // with the row in it
+	object                               *fyne.Container
 }
 
 func newStrip(reader *words.Reader, labels *words.Labels) *strip {
-	s := &strip{reader: reader, labels: labels}
+	s := &strip{reader: reader, labels: labels, ground: canvas.NewRectangle(shade(colorRaised))}
 	for _, t := range []**canvas.Text{&s.who, &s.product, &s.amount, &s.payment, &s.saved} {
 		*t = figure(theme.TextSize(), false)
 	}
 	s.who.TextStyle.Bold = true
-	row := container.New(layout.NewCustomPaddedHBoxLayout(22), s.who, s.product, s.amount, s.payment)
-	s.object = container.NewStack(canvas.NewRectangle(shade(colorRaised)),
-		container.New(layout.NewCustomPaddedLayout(3, 3, 8, 12), container.NewBorder(nil, nil, nil, s.saved, container.NewHScroll(row))))
+	s.row = container.New(layout.NewCustomPaddedHBoxLayout(22), s.who, s.product, s.amount, s.payment)
+	s.rest = container.NewClip(s.row)
+	s.object = container.New(s, s.ground, s.rest, s.saved)
 	return s
+}
+
+const (
+	stripEdge = 8
+	stripRoom = 3 // above and beneath
+)
+
+// MinSize is always the same, and the parts are put in their places at once:
+// the window draws a second frame where it finds that they are not.
+func (s *strip) MinSize([]fyne.CanvasObject) fyne.Size {
+	return fyne.NewSize(1, lineHeight(theme.TextSize())+2*stripRoom)
+}
+
+func (s *strip) Layout(_ []fyne.CanvasObject, size fyne.Size) {
+	s.ground.Resize(size)
+	saved, height := s.saved.MinSize().Width, lineHeight(theme.TextSize())
+	place(s.saved, size.Width-saved-stripEdge, stripRoom, saved, height)
+	place(s.rest, stripEdge, stripRoom, size.Width-saved-3*stripEdge, height)
+	s.row.Layout.Layout(s.row.Objects, s.row.Size())
 }
 
 func (s *strip) show(iv *interview) {
@@ -59,4 +81,5 @@ func (s *strip) show(iv *interview) {
 		saved, ink = s.reader.T("desk.saved", "time", s.reader.Time(iv.savedAt)), colorApprove
 	}
 	setFigure(s.saved, saved, ink)
+	s.Layout(nil, s.object.Size())
 }
