@@ -48,45 +48,51 @@ func (b Bounds) check(t *rapid.T, r Result) {
 func TestBoundsHoldEveryResult(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		e := drawEdition(t)
-		final := drawAnswers(t, e)
-		result := score(t, final)
-		work := e.Work(final)
-		a := e.NewAnswers(final.On, final.Client)
-		before := e.Bound(a)
-		for _, i := range rapid.Permutation(e.asked).Draw(t, "order") {
-			before.check(t, result)
-			for n, w := range e.Work(a) {
-				if w.Known() && w != work[n] {
-					t.Fatalf("%s was known to be %+v and came to %+v", e.items[n].Code, w, work[n])
-				}
-			}
-			a.Put(i, final.At(i))
-			b := e.Bound(a)
-			if b.Lowest < before.Lowest || b.Highest > before.Highest || before.Fires&^b.Fires != 0 || b.May&^before.May != 0 {
-				t.Fatalf("bounds %+v grew to %+v", before, b)
-			}
-			if before.Settled() && b.Mildest != before.Mildest || before.BandSettled() && b.FirstBand != before.FirstBand {
-				t.Fatalf("settled %+v changed to %+v", before, b)
-			}
-			if before.Narrows == i && b.Highest-b.Lowest >= before.Highest-before.Lowest && e.items[i].isChoice() {
-				t.Fatalf("%s was to narrow %+v and gave %+v", e.items[i].Code, before, b)
-			}
-			if before.Narrows >= 0 && !slices.Contains(before.Missing, before.Narrows) {
-				t.Fatalf("%+v is narrowed by what is not missing", before)
-			}
-			before = b
-		}
-		before.check(t, result)
-		if len(before.Missing) != 0 || before.Lowest != before.Highest || before.May != 0 || !before.Settled() || !before.BandSettled() {
-			t.Fatalf("nothing is missing, yet %+v", before)
-		}
-		if got := score(t, a); got != result {
-			t.Fatalf("entered in another order: %+v, want %+v", got, result)
-		}
-		if a.Text() != final.Text() {
-			t.Fatalf("entered in another order:\n%s\nwant\n%s", a.Text(), final.Text())
+		for range 8 {
+			final := drawAnswers(t, e)
+			answerInOrder(t, final, rapid.Permutation(e.asked).Draw(t, "order"))
 		}
 	})
+}
+
+func answerInOrder(t *rapid.T, final *Answers, order []int) {
+	e := final.edition
+	result, work := score(t, final), e.Work(final)
+	a := e.NewAnswers(final.On, final.Client)
+	before := e.Bound(a)
+	for _, i := range order {
+		before.check(t, result)
+		for n, w := range e.Work(a) {
+			if w.Known() && w != work[n] {
+				t.Fatalf("%s was known to be %+v and came to %+v", e.items[n].Code, w, work[n])
+			}
+		}
+		a.Put(i, final.At(i))
+		b := e.Bound(a)
+		if b.Lowest < before.Lowest || b.Highest > before.Highest || before.Fires&^b.Fires != 0 || b.May&^before.May != 0 {
+			t.Fatalf("bounds %+v grew to %+v", before, b)
+		}
+		if before.Settled() && b.Mildest != before.Mildest || before.BandSettled() && b.FirstBand != before.FirstBand {
+			t.Fatalf("settled %+v changed to %+v", before, b)
+		}
+		if before.Narrows == i && b.Highest-b.Lowest >= before.Highest-before.Lowest && e.items[i].isChoice() {
+			t.Fatalf("%s was to narrow %+v and gave %+v", e.items[i].Code, before, b)
+		}
+		if before.Narrows >= 0 && !slices.Contains(before.Missing, before.Narrows) {
+			t.Fatalf("%+v is narrowed by what is not missing", before)
+		}
+		before = b
+	}
+	before.check(t, result)
+	if len(before.Missing) != 0 || before.Lowest != before.Highest || before.May != 0 || !before.Settled() || !before.BandSettled() {
+		t.Fatalf("nothing is missing, yet %+v", before)
+	}
+	if got := score(t, a); got != result {
+		t.Fatalf("entered in another order: %+v, want %+v", got, result)
+	}
+	if a.Text() != final.Text() {
+		t.Fatalf("entered in another order:\n%s\nwant\n%s", a.Text(), final.Text())
+	}
 }
 
 // An incomplete set of answers is never scored, and says what is missing.
@@ -238,6 +244,32 @@ func TestTestsInThreeValues(t *testing.T) {
 		}
 		if n := bits.OnesCount64(uint64(score(t, a).Fired)); n != score(t, a).Fired.Len() {
 			t.Fatal("rules miscounted")
+		}
+	})
+}
+
+// The log-odds of a number lie within those of any range that it lies in, and
+// the ends of these are reached.
+func TestNumberRange(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		item := Item{from: Whole(-5), to: Whole(60), slope: Slope{rapid.Int64Range(-99, 99).Draw(t, "slope"), 2}}
+		for _, cut := range append([]Number{-Largest}, cuts(t, 4)...) {
+			item.bandAt, item.floors = append(item.bandAt, len(item.floors)), append(item.floors, cut)
+			item.weights = append(item.weights, LogOdds(rapid.Int64Range(-3, 3).Draw(t, "weight"))*LogOddsOne)
+		}
+		from := Number(rapid.Int64Range(-20e6, 80e6).Draw(t, "from"))
+		to := from + Number(rapid.Int64Range(0, 80e6).Draw(t, "width"))
+		lo, hi := item.numberRange(from, to)
+		least, most := item.counted(from, true).weight, item.counted(from, true).weight
+		for _, n := range append(item.floors, from, to, item.from, item.to, (from+to)/2) {
+			for _, n := range []Number{n - 1, n} {
+				if w := item.counted(n, true).weight; from <= n && n <= to {
+					least, most = min(least, w), max(most, w)
+				}
+			}
+		}
+		if lo != least || hi != most {
+			t.Fatalf("from %v to %v the log-odds are %v to %v, want %v to %v", from, to, lo, hi, least, most)
 		}
 	})
 }

@@ -27,7 +27,9 @@ more | More | choice | | | | recorded | pick is a |
 count | Count | number | 1 | 0 | 100 | recorded | | yes
 day | Day | date | | | | recorded | |
 income | Income | number | | | | recorded | |
+other | Other | number | | | | recorded | | yes
 ratio | Ratio | computed | 2 | | | recorded | |
+both | Both | computed | | | | recorded | |
 
 Attributes
 Characteristic | Attribute | Label | From | Below
@@ -43,6 +45,7 @@ count | high | High | 20 |
 Computed
 Characteristic | Operation | Part 1 | Part 2
 ratio | ratio | count | income
+both | sum | ratio | other
 
 Bands
 Band | Label | Recommendation
@@ -76,15 +79,16 @@ ratio_under | R | ratio | at most | 1000000 | note
 ratio_not_5 | R | ratio | is not | 5 | note
 ratio_nothing | R | ratio | is | nothing_left | note
 ratio_told | R | ratio | told only | | note
+both_unknown | R | both | unknown | | note
+both_nothing | R | both | is | nothing_left | note
 `)
-	c := gather(s)
-	e := c.e
-	rest := []string{"amount 100", "term 3", "more x", "day 1990-01-01!", "income 10!"}
+	e := gather(s).e
+	rest := []string{"amount 100", "term 3", "more x", "day 1990-01-01!", "income 10!", "other 1!"}
 	for _, c := range []struct{ answers, fires string }{
 		{"pick a!; count 5!", "is_a a_or_b a_or_unknown more_is_x is_low low_or_high not_10 below_10 at_most_10 ratio_under ratio_not_5"},
 		{"pick b; count 10", "not_a a_or_b pick_told more_none is_10 one_of_10_high at_most_10 at_least_10 ten_to_20 ratio_under ratio_not_5 ratio_told"},
 		// What is unknown meets no comparison; a question not asked neither.
-		{"pick unknown; count unknown", "a_or_unknown pick_unknown more_none"},
+		{"pick unknown; count unknown", "a_or_unknown pick_unknown more_none both_unknown"},
 		{"pick a!; more y; count 20!", "is_a a_or_b a_or_unknown more_not_x low_or_high not_10 one_of_10_high above_10 at_least_10 ten_to_20 ratio_under ratio_not_5"},
 		// A band is the one that the number is counted in: -3 is counted as 0, 200 as 100.
 		{"pick c!; count -3!", "not_a more_none is_low low_or_high not_10 below_10 at_most_10 ratio_under ratio_not_5"},
@@ -93,10 +97,11 @@ ratio_told | R | ratio | told only | | note
 		{"pick c!; count 9.9!; day 1980!", "not_a more_none is_low low_or_high not_10 below_10 at_most_10 born_1980 ratio_under ratio_not_5"},
 		{"pick c!; count 19.9!; day 1979-12-31!", "not_a more_none not_10 above_10 at_least_10 ten_to_20 born_before ratio_under ratio_not_5"},
 		// With nothing left a ratio is beyond every number, whatever its parts.
-		{"pick c!; count 20; income 0!", "not_a more_none low_or_high not_10 one_of_10_high above_10 at_least_10 ten_to_20 ratio_over ratio_not_5 ratio_nothing"},
-		{"pick c!; count 0!; income -5!", "not_a more_none is_low low_or_high not_10 below_10 at_most_10 ratio_over ratio_not_5 ratio_nothing"},
+		{"pick c!; count 20; income 0!", "not_a more_none low_or_high not_10 one_of_10_high above_10 at_least_10 ten_to_20 ratio_over ratio_not_5 ratio_nothing both_nothing"},
+		{"pick c!; count 0!; income -5!", "not_a more_none is_low low_or_high not_10 below_10 at_most_10 ratio_over ratio_not_5 ratio_nothing both_nothing"},
 		// An unknown part outranks that.
-		{"pick c!; count unknown; income 0!", "not_a more_none"},
+		{"pick c!; count unknown; income 0!", "not_a more_none both_unknown"},
+		{"pick c!; count 0!; income 0!; other unknown", "not_a more_none is_low low_or_high not_10 below_10 at_most_10 ratio_over ratio_not_5 ratio_nothing both_unknown"},
 		// A ratio is only told if one of its parts is.
 		{"pick c!; count 50; income 10!", "not_a more_none low_or_high not_10 one_of_10_high above_10 at_least_10 ratio_under ratio_told"},
 	} {
@@ -174,5 +179,46 @@ func TestDecider(t *testing.T) {
 		if got := e.Decider(Result{Band: c.band, Recommendation: c.to}, c.amount); got != c.want {
 			t.Errorf("%+v: %s", c, got)
 		}
+	}
+}
+
+// A band's From is included, its Below is not; a PD of 1 is in the last.
+func TestBandOfPD(t *testing.T) {
+	e := compiled(t, scorecardOf(t, sample))
+	for pd, want := range map[PD]int{0: 0, PDOne/10 - 1: 0, PDOne / 10: 1, PDOne/5 - 1: 1, PDOne / 5: 2, PDOne: 2} {
+		if got := e.band(pd); got != want {
+			t.Errorf("a PD of %v is in band %d, want %d", pd, got, want)
+		}
+	}
+}
+
+// A range is of the number that is counted, and there is none without a
+// covariance or with an answer missing.
+func TestRange(t *testing.T) {
+	s := scorecardOf(t, sample)
+	e := compiled(t, s)
+	a := sampleAnswers(t, e)
+	// base, own_stall.yes, years (5 of them) and share.low, and the adjustment:
+	// 0.04 + 0.01 + 25 × 0.0001 + 0.01 - 2 × 5 × 0.0001 + 0.05².
+	se, ok := e.StandardError(a)
+	near(t, "standard error", se*se, 0.064, 1e-15)
+	low, high, also := e.Range(a)
+	// R: plogis(-2.3525 + c(-1, 1) * qnorm(0.975) * sqrt(0.064))
+	if low != 54_767_394 || high != 135_092_367 || !ok || !also {
+		t.Error(low, high, ok, also)
+	}
+	years := e.byCode["years"]
+	a.Put(years, Answer{State: Given, Number: Whole(20)})
+	at20, _ := e.StandardError(a)
+	a.Put(years, Answer{State: Given, Number: Whole(55)})
+	if at55, _ := e.StandardError(a); at55 != at20 || at20 == se {
+		t.Error(se, at20, at55)
+	}
+	a.Put(years, Answer{})
+	_, _, ok = e.Range(a)
+	s.Covariance = nil
+	e = compiled(t, s)
+	if _, _, also := e.Range(sampleAnswers(t, e)); ok || also {
+		t.Error("a range of nothing")
 	}
 }
