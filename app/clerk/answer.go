@@ -18,7 +18,6 @@ func (q *interview) answerText(item *model.Item, a model.Answer) string {
 	default:
 		return ""
 	}
-	terms := q.edition.Scorecard().Terms
 	switch item.Kind {
 	case model.Choice, model.YesNo:
 		return q.label(item, a.Attribute)
@@ -29,13 +28,13 @@ func (q *interview) answerText(item *model.Item, a model.Answer) string {
 		if a.Lines != nil {
 			n = item.Monthly(a.Lines)
 		}
-		return q.words.Money(n, int(item.Decimals), terms.Currency) + ", " + q.per(model.Month)
+		return q.words.Money(n, int(item.Decimals), q.labels.Currency()) + ", " + q.per(model.Month)
 	}
 	switch item.Code {
 	case model.Amount:
-		return q.words.InWords(a.Number, int(terms.MoneyDecimals), terms.Currency)
+		return q.words.InWords(a.Number, q.labels.MoneyDecimals(), q.labels.Currency())
 	case model.Term:
-		return q.words.Term(int(a.Number/model.One), terms.TermUnit)
+		return q.words.Term(int(a.Number/model.One), q.edition.Scorecard().Terms.TermUnit)
 	}
 	return q.words.Number(a.Number, int(item.Decimals))
 }
@@ -162,8 +161,7 @@ func (q *interview) payment() string {
 }
 
 func (q *interview) money(n model.Number) string {
-	terms := q.edition.Scorecard().Terms
-	return q.words.Money(n, int(terms.MoneyDecimals), terms.Currency)
+	return q.words.Money(n, q.labels.MoneyDecimals(), q.labels.Currency())
 }
 
 // reasons are those of the rules that declined, else of the answers that spoke

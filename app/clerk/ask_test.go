@@ -134,10 +134,14 @@ func TestAskShowsWhenTheLenderSays(t *testing.T) {
 	}
 }
 
-// The verdict names a rule's cap where more is asked for.
+// The verdict names a rule's cap where more is asked for, in money as the
+// lender words it.
 func TestAskCap(t *testing.T) {
-	dir := desk(t)
-	for language, want := range map[string]string{"en": "\nAPPROVE, 500 crowns at the most\n", "fr": "\nAPPROUVER, 500 crowns au plus\n", "es": "\nAPROBAR, 500 crowns como máximo\n"} {
+	card := stallCard(t)
+	card.Words = append(card.Words, model.Wording{Code: "currency", Language: "fr", Text: "couronnes"})
+	dir := t.TempDir()
+	writeCard(t, filepath.Join(dir, "card.xlsx"), card)
+	for language, want := range map[string]string{"en": "\nAPPROVE, 500 crowns at the most\n", "fr": "\nAPPROUVER, 500 couronnes au plus\n", "es": "\nAPROBAR, 500 crowns como máximo\n"} {
 		const in = "n\n600\n12\n1\nn\nn\n2015\n0\n=900\n"
 		_, out, _ := call(t, dir, in, "ask", "-card", "card.xlsx", "-on", "2026-03-02", "-language", language)
 		if !strings.Contains(strings.ReplaceAll(out, "\u00a0", " "), want) {

@@ -12,7 +12,8 @@ import (
 // The codes of the sheet Words are these, with the codes of the workbook in
 // place of the capitals:
 //
-//	product, title, default_means
+//	product, title, default_means, currency
+//	notes, complaints_contact, letter.decline
 //	section.TEXT            TEXT as the sheet Characteristics has it
 //	CHARACTERISTIC          the question
 //	CHARACTERISTIC.unit, CHARACTERISTIC.help, CHARACTERISTIC.papers
@@ -62,10 +63,13 @@ func (l *Labels) Question(i *model.Item) string { return l.Text(i.Code, i.Questi
 // Unit is what a number is counted in.
 func (l *Labels) Unit(i *model.Item) string { return l.Text(i.Code+".unit", i.Unit) }
 
-// Currency names the money: as the lender words the unit of a characteristic
-// that is counted in it, else as the sheet Terms has it.
+// Currency names the money: as the lender words it, or the unit of a
+// characteristic that is counted in it, else as the sheet Terms has it.
 func (l *Labels) Currency() string {
 	currency := l.edition.Scorecard().Terms.Currency
+	if own := l.Text("currency", currency); own != currency {
+		return own
+	}
 	for i := range l.edition.Items() {
 		item := &l.edition.Items()[i]
 		if unit := l.Unit(item); item.Unit == currency && unit != currency {
