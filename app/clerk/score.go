@@ -168,10 +168,13 @@ func (s *scorer) all(ctx context.Context, in *table.Reader, out io.Writer, tell 
 		}
 		tell(scored + refused)
 	}
-	if reading != io.EOF {
-		return scored, refused, cannot(reading)
+	switch reading {
+	case io.EOF:
+		return scored, refused, nil
+	case nil: // the reader stopped because it was told to
+		return scored, refused, problem("clerk_interrupted")
 	}
-	return scored, refused, nil
+	return scored, refused, cannot(reading)
 }
 
 func (s *scorer) batch(b *batch) {
