@@ -182,6 +182,7 @@ func TestAnswerToWhatIsNotAsked(t *testing.T) {
 func TestManyPartsAreNoTrouble(t *testing.T) {
 	var b strings.Builder
 	b.WriteString("Characteristics\nCharacteristic | Question | Kind | Use\n")
+	b.WriteString("payment | Payment | computed | recorded\nshare | Share | computed | recorded\n")
 	for i := range 60 {
 		fmt.Fprintf(&b, "c%d | Computed | computed | recorded\n", i)
 	}
@@ -193,10 +194,18 @@ func TestManyPartsAreNoTrouble(t *testing.T) {
 		}
 		fmt.Fprintf(&b, "c%d | sum%s\n", i, strings.Repeat(" | "+part, 8))
 	}
-	b.WriteString("\nBands\nBand | Label | Recommendation\na | All | approve")
-	e := gather(partOf(b.String())).e
+	b.WriteString("payment | instalment\nshare | ratio | payment | c59\n\nBands\nBand | Label | Recommendation\na | All | approve")
+	s := partOf(b.String())
+	s.Terms.TermUnit = Weeks
+	c := gather(s)
+	for _, p := range c.problems {
+		if p.Code != "missing_sheet" && p.Code != "no_checks" {
+			t.Error(p)
+		}
+	}
+	e := c.e
 	a := answered(t, e, "amount 100", "term 3")
-	if w := e.Work(a)[61]; w.Low != Largest.Round(0) || !w.Known() {
+	if w := e.Work(a)[e.byCode["c59"]]; w.Low != Largest.Round(0) || !w.Known() {
 		t.Errorf("%+v", w)
 	}
 	if _, ok := e.Score(a); !ok {

@@ -222,23 +222,33 @@ func (c *compiler) monthlyMoney() {
 	if unit := c.s.Terms.TermUnit; unit != Weeks && unit != Fortnights {
 		return
 	}
+	monthly := c.monthly()
 	for i, f := range c.s.Computed {
 		item := c.item(f.Characteristic)
 		if item == nil || f.Operation != Ratio || len(item.parts) != 2 || !slices.Contains(c.e.order, item.Index) {
 			continue
 		}
 		payment, left := &c.e.items[item.parts[0].index], &c.e.items[item.parts[1].index]
-		if payment.Operation == Instalment && c.isMonthly(left) {
+		if payment.Operation == Instalment && monthly[left.Index] {
 			c.add(Problem{Code: "instalment_not_monthly", Place: at("Computed", i+1, "Part 1"),
 				Args: Args{"value": payment.Code, "against": left.Code, "expected": string(MonthlyInstalment)}})
 		}
 	}
 }
 
-// isMonthly tells what is, or is summed from, a worksheet's monthly money.
-func (c *compiler) isMonthly(item *Item) bool {
-	return item.Kind == Worksheet || item.Operation == Sum &&
-		slices.ContainsFunc(item.parts, func(p part) bool { return c.isMonthly(&c.e.items[p.index]) })
+// monthly tells of each item whether it is, or is summed from, a worksheet's
+// monthly money.
+func (c *compiler) monthly() []bool {
+	monthly := make([]bool, len(c.e.items))
+	for i := range c.e.items {
+		monthly[i] = c.e.items[i].Kind == Worksheet
+	}
+	for _, i := range c.e.order {
+		for _, p := range c.e.items[i].parts {
+			monthly[i] = monthly[i] || c.e.items[i].Operation == Sum && monthly[p.index]
+		}
+	}
+	return monthly
 }
 
 // Parts are the indexes of what a computed item is worked out from.

@@ -141,16 +141,20 @@ func (e *Edition) instalment(amount, term Number) Number {
 	return e.money(payment)
 }
 
-// aMonth is what payments of that amount come to in a month, rounded once.
+// aMonth is what payments of that amount come to in a month, rounded once;
+// Largest where there is no such payment.
 func (e *Edition) aMonth(payment Number, decimals int) Number {
-	times := Month.TimesAYear()
+	period := Month
 	switch e.card.Terms.TermUnit {
 	case Weeks:
-		times = Week.TimesAYear()
+		period = Week
 	case Fortnights:
-		times = Fortnight.TimesAYear()
+		period = Fortnight
 	}
-	return payment.Times(Whole(times), MostDecimals).Over(Whole(12), decimals)
+	if period == Month || payment == Largest {
+		return payment.Round(decimals)
+	}
+	return payment.Times(Whole(period.TimesAYear()), MostDecimals).Over(Whole(12), decimals)
 }
 
 // instalmentRange is the range of an instalment over the amounts and terms
