@@ -258,6 +258,11 @@ func TestBlankAndPractice(t *testing.T) {
 	if code, _, problems := call(t, dir, "", "try", "b.xlsx", "u.xlsx"); code != 1 || !strings.Contains(problems, "Card!") {
 		t.Error("a blank workbook to try:", code, problems)
 	}
+	for _, args := range [][]string{{"practice", ""}, {"blank", ""}, {"try", "card.xlsx", ""}} {
+		if code, _, problems := call(t, dir, "", args...); code != 1 || !strings.Contains(problems, "a name that ends in .xlsx") {
+			t.Errorf("clerk %q: %d %s", args, code, problems)
+		}
+	}
 	_, want, _ := call(t, dir, "", "check", "card.xlsx")
 	if _, got, _ := call(t, dir, "", "check", "t.xlsx"); got != want {
 		t.Error(got)

@@ -96,7 +96,7 @@ func (k *clerk) practice() error {
 // isFolder tells a folder, made or not, from a file.
 func isFolder(path string) bool {
 	info, err := os.Stat(path)
-	return err == nil && info.IsDir() || os.IsPathSeparator(path[len(path)-1])
+	return err == nil && info.IsDir() || path != "" && os.IsPathSeparator(path[len(path)-1])
 }
 
 // practiceBranch makes the practice branch where it is not there yet.
