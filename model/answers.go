@@ -40,7 +40,8 @@ type Money struct {
 	Set    bool
 }
 
-// Answers are one applicant's, to the questions of one edition.
+// Answers are one applicant's, to the questions of one edition. They are not
+// for use by several goroutines at once.
 type Answers struct {
 	// On is the day of the application, from which ages are counted.
 	On Date

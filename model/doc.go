@@ -26,7 +26,8 @@
 // error, [Edition.Ground] where it goes beyond what the edition was made from.
 // What else could be done: [Edition.TermsThatFit]. What is kept: the
 // canonical texts of [Scorecard.Canonical] and [Answers.Text], which score the
-// same to the last digit for ever.
+// same to the last digit for ever; [Answers.Carry] takes answers over to another
+// edition.
 //
 // # The sum
 //
@@ -37,7 +38,8 @@
 // A choice has the log-odds of the attribute picked. A number has those of the
 // band it falls in (From is included, Below is not), and those of a slope times
 // the number, or both; either way it is first clamped to what is counted.
-// Higher log-odds are riskier, a higher score is safer.
+// Higher log-odds are riskier, a higher score is safer. On paper the same sum is
+// [Edition.Points] added to the score of [Edition.Constant].
 //
 // Nothing is lost on the way: [LogOdds] are whole billionths and summed as
 // such, in any order; [Number] is a decimal of whole millionths; a [Slope] times
