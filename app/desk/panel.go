@@ -113,6 +113,8 @@ func (p *panel) firm(iv *interview, settled bool) string {
 	switch {
 	case !iv.shows():
 		return p.reader.T(iv.waitsFor())
+	case p.overCap(iv) != "":
+		return p.overCap(iv)
 	case iv.handedIn:
 		return p.reader.T("desk.handed_in")
 	case iv.complete:
@@ -122,6 +124,16 @@ func (p *panel) firm(iv *interview, settled bool) string {
 	case iv.bounds.Narrows >= 0:
 		item := &p.edition.Items()[iv.bounds.Narrows]
 		return p.reader.T("desk.narrows", "number", item.Number)
+	}
+	return ""
+}
+
+// overCap says that the recommendation is not for the amount asked, where a
+// rule's cap is below it; empty where none is.
+func (p *panel) overCap(iv *interview) string {
+	amount, _, ok := iv.answers.AmountAndTerm()
+	if most := iv.result.LargestAmount; ok && iv.complete && iv.result.Recommendation != model.Decline && most.Set && most.Value < amount {
+		return p.reader.T("desk.largest", "amount", moneyWords(p.reader, p.labels, most.Value))
 	}
 	return ""
 }
@@ -151,9 +163,6 @@ func (p *panel) deciderWords(iv *interview) string {
 		return ""
 	}
 	text := p.reader.T("desk.decides." + string(p.edition.Decider(iv.result, amount)))
-	if most := iv.result.LargestAmount; most.Set && most.Value < amount {
-		text += " " + p.reader.T("desk.largest", "amount", moneyWords(p.reader, p.labels, most.Value))
-	}
 	if _, caution := p.labels.Band(iv.result.Band); caution != "" {
 		text += "\n" + caution
 	}
