@@ -21,10 +21,10 @@
 //	                        Bounds ◀── Bound
 //
 // Why a result is what it is: [Edition.Steps] are the parts of its sum,
-// [Edition.Reasons] those that speak against it, [PolicyRule]s those that
-// overrode it. How far it can be trusted: [Edition.Range] is its sampling
-// error, [Edition.Ground] where it goes beyond what the edition was made from.
-// What else could be done: [Edition.TermsThatFit]. What is kept: the
+// [Edition.Reasons] those that speak against it, and Result.Fired tells which of
+// [Edition.Rules] overrode it. How far it can be trusted: [Edition.Range] is its
+// sampling error, [Edition.Ground] where it goes beyond what the edition was
+// made from. What else could be done: [Edition.TermsThatFit]. What is kept: the
 // canonical texts of [Scorecard.Canonical] and [Answers.Text], which score the
 // same to the last digit for ever; [Answers.Carry] takes answers over to another
 // edition.
