@@ -65,6 +65,9 @@ func (p *panel) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(1, 
 // Layout stacks the parts, the verdict beside its mark. A part that says
 // nothing takes no room.
 func (p *panel) Layout(_ []fyne.CanvasObject, size fyne.Size) {
+	if size.Width < panelWidth/2 {
+		return // not in its place yet; its texts would wrap to a tower
+	}
 	width, y := size.Width-2*panelEdge, float32(panelEdge)
 	place(p.answered, panelEdge, y, width, lineHeight(p.answered.TextSize))
 	y += lineHeight(p.answered.TextSize) + panelGap
