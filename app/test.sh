@@ -9,7 +9,7 @@ need git $window_packages $test_packages
 
 # All but the window's own main package build without cgo, and fast.
 export CGO_ENABLED=0
-packages=$(go list ./... | grep -v '^weighhouse/app$')
+packages=$(go list -e ./... | grep -v '^weighhouse/app$')
 
 say "Formatting"
 unformatted=$(gofmt -l app model store assets)

@@ -144,8 +144,8 @@ func (a *Answers) Text() string {
 func (e *Edition) ParseAnswers(text string) (*Answers, []Problem) {
 	a := e.NewAnswers(Date{}, "")
 	var problems []Problem
-	bad := func(code string, p Problem) {
-		p.Place = answerPlace(code)
+	bad := func(line string, p Problem) {
+		p.Place = answerPlace(line)
 		problems = append(problems, p)
 	}
 	client, dated := "", false
