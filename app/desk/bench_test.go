@@ -67,25 +67,6 @@ func pastApplications(tb testing.TB, session *store.Session) []practice.Applicat
 	return past
 }
 
-// settle does what the window does before it draws a frame: it asks every part
-// in sight how much room it needs.
-func settle(o fyne.CanvasObject) {
-	if !o.Visible() {
-		return
-	}
-	var parts []fyne.CanvasObject
-	switch o := o.(type) {
-	case *fyne.Container:
-		parts = o.Objects
-	case fyne.Widget:
-		parts = test.WidgetRenderer(o).Objects()
-	}
-	for _, part := range parts {
-		settle(part)
-	}
-	o.MinSize()
-}
-
 // A changed answer on the page of a whole application: the handler, and then
 // what a frame lays out.
 func BenchmarkChangedAnswer(b *testing.B) {
