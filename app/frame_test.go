@@ -9,6 +9,7 @@ import (
 	"os"
 	"slices"
 	"strconv"
+	"sync"
 	"testing"
 	"time"
 
@@ -83,9 +84,9 @@ type stage struct {
 	probe  *probe
 }
 
-// onStage waits for the first page and answers all of its questions, so that
-// the last line of its worksheet has the focus.
-func onStage() *stage {
+// onStage waits for the first page and answers all of its questions, once, so
+// that the last line of its worksheet has the focus.
+var onStage = sync.OnceValue(func() *stage {
 	s := &stage{probe: &probe{spot: canvas.NewRaster(func(int, int) image.Image { return image.NewUniform(image.Black.C) })}}
 	s.probe.ExtendBaseWidget(s.probe)
 	for ready := false; !ready; time.Sleep(20 * time.Millisecond) {
@@ -102,7 +103,7 @@ func onStage() *stage {
 	}
 	fyne.DoAndWait(func() { s.text("50"); s.enter() })
 	return s
-}
+})
 
 // enter puts the probe first on the page.
 func (s *stage) enter() {
@@ -199,6 +200,39 @@ func BenchmarkFrame(b *testing.B) {
 	run("worksheet line typed", func(i int) { s.digit(i) })
 	back(9 + 3)
 	run("yes or no", func(i int) { s.text("ny"[i%2 : i%2+1]) })
+}
+
+// BenchmarkPage opens pages, and goes through the list of kept results, until
+// the frame that shows it.
+func BenchmarkPage(b *testing.B) {
+	s := onStage()
+	run := func(name string, change func(i int)) {
+		b.Run(name, func(b *testing.B) {
+			var all []frame
+			for i := 0; b.Loop(); i++ {
+				all = append(all, s.frame(func() { change(i) }))
+			}
+			b.ReportMetric(median(all, func(f frame) time.Duration { return f.change }), "change-µs")
+			b.ReportMetric(median(all, func(f frame) time.Duration { return f.drawn }), "drawn-µs")
+			b.ReportMetric(median(all, func(f frame) time.Duration { return f.worked }), "cpu-µs")
+			b.ReportMetric(median(all, func(f frame) time.Duration { return time.Duration(f.frames) })*1000, "frames")
+			b.ReportMetric(0, "ns/op")
+		})
+	}
+	run("kept and back", func(i int) { s.window([]fyne.KeyName{fyne.KeyF3, fyne.KeyEscape}[i%2]); s.enter() })
+	fyne.DoAndWait(func() { s.window(fyne.KeyF3); s.enter() })
+	run("kept, a page further", func(int) { s.key(fyne.KeyPageDown) })
+	run("kept, its other end", func(i int) { s.key([]fyne.KeyName{fyne.KeyEnd, fyne.KeyHome}[i%2]) })
+	fyne.DoAndWait(func() { s.window(fyne.KeyEscape); s.enter() })
+}
+
+// window presses a key of the window.
+func (s *stage) window(name fyne.KeyName) {
+	if s.canvas.Focused() != nil {
+		s.key(name)
+	} else {
+		s.canvas.OnTypedKey()(&fyne.KeyEvent{Name: name})
+	}
 }
 
 // digit types numbers of five digits, one digit a call, each another number.

@@ -150,10 +150,27 @@ func (d *Desk) remember(name, value string) {
 // open shows a page.
 func (d *Desk) open(p page) {
 	d.page = p
-	d.shell = frame(d.banner(), d.keyBar(), nil, nil, p.object())
-	d.window.SetContent(d.shell)
+	d.fill(frame(d.banner(), d.keyBar(), nil, nil, p.object()))
 	d.window.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { d.key(e.Name) })
 	p.opened()
+}
+
+// fill puts a page in the window, whose own content stays the same: with
+// another the library would throw away every text that it has drawn.
+func (d *Desk) fill(page fyne.CanvasObject) {
+	if d.shell == nil {
+		d.shell = container.NewStack(page)
+		d.window.SetContent(d.shell)
+		return
+	}
+	c := d.window.Canvas()
+	if e, ok := c.Focused().(*entry); ok {
+		e.moved = nil // it goes with its page, which was left before
+	}
+	c.Unfocus()
+	d.shell.Objects = []fyne.CanvasObject{page}
+	page.Resize(d.shell.Size())
+	canvas.Refresh(d.shell)
 }
 
 // banner marks every page of the practice branch, and names the branch.

@@ -33,7 +33,8 @@ type panel struct {
 	problem  *prose              // why nothing is saved
 	below    []fyne.CanvasObject // all those beneath the verdict
 	body     *fyne.Container
-	height   float32 // the most that the body has needed
+	height   float32 // of the body, where it is more than there is room for
+	scroll   *container.Scroll
 	object   fyne.CanvasObject
 }
 
@@ -46,9 +47,10 @@ func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caut
 		rules: text(theme.ColorNameWarning), problem: text(theme.ColorNameError)}
 	p.below = []fyne.CanvasObject{p.firmness, p.odds, p.figures, widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem}
 	p.body = container.New(p, append([]fyne.CanvasObject{p.answered, p.mark, p.verdict}, p.below...)...)
+	p.scroll = container.NewVScroll(p.body)
 	ground := canvas.NewRectangle(shade(colorRaised))
 	p.object = container.NewStack(ground, container.NewBorder(nil,
-		container.NewVBox(widget.NewSeparator(), caution), nil, nil, container.NewVScroll(p.body)))
+		container.NewVBox(widget.NewSeparator(), caution), nil, nil, p.scroll))
 	return p
 }
 
@@ -58,8 +60,9 @@ const (
 	markSide  = 44
 )
 
-// MinSize is as high as it ever was, and the parts are put in their places at
-// once: the window draws a second frame where it finds that they are not.
+// MinSize is the same for all that there is room for, and the parts are put in
+// their places at once: the window draws a second frame where it finds that
+// they are not.
 func (p *panel) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(1, p.height) }
 
 // Layout stacks the parts, the verdict beside its mark. A part that says
@@ -84,7 +87,9 @@ func (p *panel) Layout(_ []fyne.CanvasObject, size fyne.Size) {
 		place(o, panelEdge, y, width, h)
 		y += h
 	}
-	p.height = max(p.height, y+panelEdge)
+	if p.height = y + panelEdge; p.height <= p.scroll.Size().Height {
+		p.height = 0
+	}
 }
 
 // show brings every figure up to date.
