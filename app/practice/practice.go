@@ -133,17 +133,15 @@ func furnish(ctx context.Context, s *store.Session, c *calendar) error {
 // where the clock stands before it.
 func confirm(ctx context.Context, s *store.Session, c *calendar) error {
 	_, err := s.Branch().Today()
-	for _, p := range store.Problems(err) {
-		if p.Code != "doubtful_date" {
-			return err
-		}
-		today := model.DateOf(c.now())
-		if last, err := model.ParseDate(p.Args["last"]); err == nil && today.Before(last) {
-			today = last.AddDays(1)
-		}
-		return s.ConfirmDate(ctx, today)
+	problems := store.Problems(err)
+	if err == nil || len(problems) != 1 || problems[0].Code != "doubtful_date" {
+		return err
 	}
-	return nil
+	today := model.DateOf(c.now())
+	if last, err := model.ParseDate(problems[0].Args["last"]); err == nil && today.Before(last) {
+		today = last.AddDays(1)
+	}
+	return s.ConfirmDate(ctx, today)
 }
 
 func has(err error, code string) bool {
