@@ -29,7 +29,7 @@ func (d *Desk) appear(o Options, painted func()) (err error) {
 	d.window.Resize(smallest)
 	d.window.CenterOnScreen()
 	first := sync.OnceFunc(painted)
-	d.window.SetContent(canvas.NewRaster(func(int, int) image.Image {
+	d.fill(canvas.NewRaster(func(int, int) image.Image {
 		first()
 		return image.NewUniform(shade(theme.ColorNameBackground))
 	}))

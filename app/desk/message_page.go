@@ -54,7 +54,7 @@ func (d *Desk) curtain() fyne.CanvasObject {
 // go by yet but the one asked for.
 func (d *Desk) refuse(o Options, err error) {
 	r := words.New(words.StyleOf(o.Language))
-	d.window.SetContent(message(r.T("shell.cannot_open", "reason", errorWords(r, err))))
+	d.fill(message(r.T("shell.cannot_open", "reason", errorWords(r, err))))
 }
 
 // errorWords are all problems of an error, a line each; empty for none.
