@@ -6,6 +6,7 @@ import (
 	"errors"
 	"slices"
 	"strconv"
+	"strings"
 	"time"
 
 	"weighhouse/model/duty"
@@ -102,28 +103,26 @@ func (s *Session) Results(ctx context.Context, first, count int) ([]Kept, error)
 }
 
 // resultIDs are all results' ids in order, so that any page is found without
-// counting through those before it. They are read once.
+// counting through those before it. They are read once, as one text: row by
+// row takes four times as long, and the first page waits for it.
 func (b *Branch) resultIDs(ctx context.Context) ([]int64, error) {
 	b.resultsMu.Lock()
 	defer b.resultsMu.Unlock()
 	if b.results != nil {
 		return b.results, nil
 	}
-	rows, err := b.db.QueryContext(ctx, "SELECT entry FROM results")
+	var text string
+	err := b.db.QueryRowContext(ctx, "SELECT ifnull(group_concat(entry, ' '), '') FROM results").Scan(&text)
 	if err != nil {
 		return nil, fault(b.path, err)
 	}
-	defer rows.Close()
-	ids := []int64{}
-	for rows.Next() {
-		var id int64
-		if err := rows.Scan(&id); err != nil {
+	ids := make([]int64, 0, strings.Count(text, " ")+1)
+	for field := range strings.FieldsSeq(text) {
+		id, err := strconv.ParseInt(field, 10, 64)
+		if err != nil {
 			return nil, fault(b.path, err)
 		}
 		ids = append(ids, id)
-	}
-	if err := rows.Err(); err != nil {
-		return nil, fault(b.path, err)
 	}
 	slices.Sort(ids)
 	b.results = ids
