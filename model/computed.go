@@ -222,7 +222,7 @@ func (c *compiler) monthlyMoney() {
 	if unit := c.s.Terms.TermUnit; unit != Weeks && unit != Fortnights {
 		return
 	}
-	monthly := c.monthly()
+	monthly := c.e.monthly()
 	for i, f := range c.s.Computed {
 		item := c.item(f.Characteristic)
 		if item == nil || f.Operation != Ratio || len(item.parts) != 2 || !slices.Contains(c.e.order, item.Index) {
@@ -238,14 +238,14 @@ func (c *compiler) monthlyMoney() {
 
 // monthly tells of each item whether it is, or is summed from, a worksheet's
 // monthly money.
-func (c *compiler) monthly() []bool {
-	monthly := make([]bool, len(c.e.items))
-	for i := range c.e.items {
-		monthly[i] = c.e.items[i].Kind == Worksheet
+func (e *Edition) monthly() []bool {
+	monthly := make([]bool, len(e.items))
+	for i := range e.items {
+		monthly[i] = e.items[i].Kind == Worksheet
 	}
-	for _, i := range c.e.order {
-		for _, p := range c.e.items[i].parts {
-			monthly[i] = monthly[i] || c.e.items[i].Operation == Sum && monthly[p.index]
+	for _, i := range e.order {
+		for _, p := range e.items[i].parts {
+			monthly[i] = monthly[i] || e.items[i].Operation == Sum && monthly[p.index]
 		}
 	}
 	return monthly
@@ -260,12 +260,13 @@ func (item *Item) Parts() []int {
 	return list
 }
 
-// PaymentShare finds the item that sets the payment against what is left: the
-// first ratio whose first part is an instalment. share, payment and left are
+// PaymentShare finds the item that sets the payment against what is left each
+// month: the first ratio of an instalment to a worksheet's money. share, payment and left are
 // indexes; ok is false where the edition has none.
 func (e *Edition) PaymentShare() (share, payment, left int, ok bool) {
+	monthly := e.monthly()
 	share = slices.IndexFunc(e.items, func(item Item) bool {
-		return item.Operation == Ratio && e.items[item.parts[0].index].isPayment()
+		return item.Operation == Ratio && e.items[item.parts[0].index].isPayment() && monthly[item.parts[1].index]
 	})
 	if share < 0 {
 		return 0, 0, 0, false

@@ -139,9 +139,6 @@ func (b *balance) MouseIn(e *desktop.MouseEvent) { b.MouseMoved(e) }
 func (b *balance) MouseOut()                     {}
 
 func (b *balance) TypedKey(e *fyne.KeyEvent) {
-	if b.keys.take(e) {
-		return
-	}
 	switch e.Name {
 	case fyne.KeyDown:
 		b.choose(min(b.chosen+1, len(b.rows)-1))
@@ -151,6 +148,8 @@ func (b *balance) TypedKey(e *fyne.KeyEvent) {
 		b.choose(0)
 	case fyne.KeyEnd:
 		b.choose(len(b.rows) - 1)
+	default:
+		b.keys.take(e)
 	}
 }
 

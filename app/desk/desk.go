@@ -38,9 +38,10 @@ type Desk struct {
 	post func(func())
 
 	page      page
-	interview *interview    // the application at hand; nil before the first
-	written   chan struct{} // closed once all acts begun are written; nil before the first
-	closing   bool          // the window was told to close and stayed
+	scrolled  *container.Scroll // the page's, where it is one long text
+	interview *interview        // the application at hand; nil before the first
+	written   chan struct{}     // closed once all acts begun are written; nil before the first
+	closing   bool              // the window was told to close and stayed
 	shell     *fyne.Container
 }
 
@@ -149,7 +150,7 @@ func (d *Desk) remember(name, value string) {
 
 // open shows a page.
 func (d *Desk) open(p page) {
-	d.page = p
+	d.page, d.scrolled = p, nil
 	d.fill(frame(d.banner(), d.keyBar(), nil, nil, p.object()))
 	d.window.Canvas().SetOnTypedKey(func(e *fyne.KeyEvent) { d.key(e.Name) })
 	p.opened()

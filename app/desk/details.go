@@ -65,7 +65,7 @@ func (p *detailsPage) object() fyne.CanvasObject {
 		}
 	}
 	return inset(frame(heading(r.T("details.title")), d.caution(), nil, nil,
-		container.NewVScroll(container.NewVBox(form, widget.NewSeparator(), heading(r.T("details.worked")), work))))
+		d.long(container.NewVBox(form, widget.NewSeparator(), heading(r.T("details.worked")), work))))
 }
 
 func madeFrom(r *words.Reader, card model.Card) string {

@@ -108,15 +108,15 @@ func (d *Desk) note(text string) {
 
 // newApplication begins anew.
 func (d *Desk) newApplication() {
-	product, client := "", model.NewClients
+	product := ""
 	if iv := d.interview; iv != nil {
 		if d.unfinished() {
 			return
 		}
-		product, client = iv.edition.Scorecard().Card.ProductCode, iv.answers.Client
+		product = iv.edition.Scorecard().Card.ProductCode
 		d.setAside(iv)
 	}
-	iv, err := d.freshInterview(product, client)
+	iv, err := d.freshInterview(product, model.NewClients)
 	if err != nil {
 		d.interview = nil
 		d.open(&messagePage{d, err})

@@ -52,9 +52,31 @@ func (d *Desk) key(name fyne.KeyName) bool {
 	case fyne.KeyEscape:
 		d.show("interview")
 	default:
-		return false
+		return d.scroll(name)
 	}
 	return true
+}
+
+// long is a page's content that may be longer than the window; the arrows,
+// Page Up, Page Down, Home and End move it where nothing on the page uses them.
+func (d *Desk) long(content fyne.CanvasObject) *container.Scroll {
+	d.scrolled = container.NewVScroll(content)
+	return d.scrolled
+}
+
+func (d *Desk) scroll(name fyne.KeyName) bool {
+	if d.scrolled == nil {
+		return false
+	}
+	const line = 40
+	page := max(d.scrolled.Size().Height-line, line)
+	by, ok := map[fyne.KeyName]float32{fyne.KeyDown: line, fyne.KeyUp: -line, fyne.KeyPageDown: page, fyne.KeyPageUp: -page,
+		fyne.KeyEnd: d.scrolled.Content.Size().Height, fyne.KeyHome: -d.scrolled.Content.Size().Height}[name]
+	if ok {
+		most := max(d.scrolled.Content.Size().Height-d.scrolled.Size().Height, 0)
+		d.scrolled.ScrollToOffset(fyne.NewPos(0, min(max(d.scrolled.Offset.Y+by, 0), most)))
+	}
+	return ok
 }
 
 // keyBar names the keys along the foot; a click does what the key does.

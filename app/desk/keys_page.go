@@ -25,5 +25,5 @@ func (p *keysPage) object() fyne.CanvasObject {
 		add(string(k.key), k.word)
 	}
 	add(r.T("keys.escape"), "escape")
-	return inset(frame(heading(r.T("keys.title")), nil, nil, nil, container.NewVScroll(form)))
+	return inset(frame(heading(r.T("keys.title")), nil, nil, nil, p.desk.long(form)))
 }

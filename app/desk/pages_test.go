@@ -740,7 +740,7 @@ func TestScorecardAccepted(t *testing.T) {
 	w.untilRead()
 	p := w.page.(*scorecardsPage)
 	w.says("This workbook is sound", "Telephone code "+p.reading.Edition.TelephoneCode(), "Read this code to head office")
-	w.keys("Return")
+	w.keys("Shift+Tab", "Return") // a second Enter alone accepts nothing
 	w.says("Accepted: Working capital loan scorecard", "scorecard edition 2")
 	if n := w.interview.edition.Scorecard().Card.Edition; n != 1 {
 		t.Error("work at hand went over to another edition")

@@ -205,7 +205,7 @@ func (p *scorecardsPage) verdict() fyne.CanvasObject {
 		head.Add(heading(r.T("scorecards.sound")))
 		head.Add(paragraph(strings.Join([]string{p.file, d.editionWords(p.reading.Edition),
 			r.T("scorecards.code", "code", p.reading.Edition.TelephoneCode()), r.T("scorecards.read_code")}, "\n")))
-		p.start = push("scorecards.accept", p.accept)
+		push("scorecards.accept", p.accept)
 	} else {
 		head.Add(heading(r.T("scorecards.refused", "n", len(problems))))
 		head.Add(paragraph(p.file))
@@ -217,7 +217,8 @@ func (p *scorecardsPage) verdict() fyne.CanvasObject {
 		push("scorecards.save_list", p.saveList)
 		push("scorecards.save_copy", p.saveCopy)
 	}
-	push("scorecards.another", p.back)
+	// Accepting cannot be undone: it is not where a second Enter lands.
+	p.start = push("scorecards.another", p.back)
 	head.Add(buttons)
 	if len(problems) == 0 {
 		return inset(frame(head, nil, nil, nil, layout.NewSpacer()))

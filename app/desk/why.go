@@ -38,7 +38,7 @@ func (p *whyPage) object() fyne.CanvasObject {
 	}
 	reasons := paragraph(strings.Join(reasonWords(d.reader, labels, iv), "\n"))
 	head := container.NewVBox(heading(d.reader.T("why.title")), caption(d.reader.T("why.keys")))
-	return inset(frame(head, d.caution(), nil, nil, container.NewVScroll(container.NewVBox(picture,
+	return inset(frame(head, d.caution(), nil, nil, d.long(container.NewVBox(picture,
 		widget.NewSeparator(), heading(d.reader.T("why.reasons")), reasons))))
 }
 
@@ -65,10 +65,7 @@ func reasonWords(r *words.Reader, l *words.Labels, iv *interview) []string {
 	}
 	var lines []string
 	for _, rule := range iv.edition.DecliningRules(iv.result.Fired) {
-		label, text := l.Rule(rule)
-		if text != "" {
-			label = text
-		}
+		label, _ := l.Rule(rule) // its text may be advice, the label is the reason
 		lines = append(lines, r.T("why.by_rule", "rule", label))
 	}
 	if lines != nil {

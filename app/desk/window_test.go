@@ -316,7 +316,7 @@ func TestWindowScorecards(t *testing.T) {
 	s.keys("ctrl+a")
 	s.answers(good)
 	s.shot("13-sound")
-	s.keys("Return")
+	s.keys("shift+Tab", "Return")
 	s.shot("14-accepted")
 	s.close()
 
