@@ -31,13 +31,13 @@ var (
 
 // screen is a virtual display with a window manager and the program on it.
 type screen struct {
-	t       *testing.T
+	t       testing.TB
 	display string
 	program *exec.Cmd
 }
 
 // bare starts a virtual display of a size, with nothing on it.
-func bare(t *testing.T, size string, options ...string) *screen {
+func bare(t testing.TB, size string, options ...string) *screen {
 	t.Helper()
 	read, write, err := os.Pipe()
 	if err != nil {
@@ -57,7 +57,7 @@ func bare(t *testing.T, size string, options ...string) *screen {
 
 // open starts the program at a size of the screen and waits until it has
 // drawn a page.
-func open(t *testing.T, size string, arguments ...string) *screen {
+func open(t testing.TB, size string, arguments ...string) *screen {
 	t.Helper()
 	s := bare(t, size)
 	start(t, s.command("openbox"))
@@ -70,7 +70,7 @@ func open(t *testing.T, size string, arguments ...string) *screen {
 	return s
 }
 
-func start(t *testing.T, c *exec.Cmd) {
+func start(t testing.TB, c *exec.Cmd) {
 	t.Helper()
 	if err := c.Start(); err != nil {
 		t.Fatal(err)
