@@ -193,8 +193,12 @@ func BenchmarkFrame(b *testing.B) {
 			b.ReportMetric(median(changed, drawn)/median(same, drawn), "ratio")
 			b.ReportMetric(median(changed, worked)/median(same, worked), "cpu-ratio")
 			b.ReportMetric(median(same, worked), "same-cpu-µs")
-			b.ReportMetric(median(changed, func(f frame) time.Duration { return time.Duration(f.frames) })*1000, "frames")
+			frames := median(changed, func(f frame) time.Duration { return time.Duration(f.frames) }) * 1000
+			b.ReportMetric(frames, "frames")
 			b.ReportMetric(0, "ns/op")
+			if frames > 1 {
+				b.Error("a changed answer draws more than one frame")
+			}
 		})
 	}
 	run("worksheet line typed", func(i int) { s.digit(i) })

@@ -4,6 +4,7 @@ package desk
 
 import (
 	"context"
+	"strconv"
 	"syscall"
 	"testing"
 	"time"
@@ -87,13 +88,13 @@ func BenchmarkChangedAnswer(b *testing.B) {
 			settle(canvas.Content())
 		})
 	}
-	digits := func(i int) { // figures of up to four digits, hardly any twice
-		if i%4 == 0 {
-			for range 4 {
+	digits := func(i int) { // numbers of five digits, one digit a call, each another number
+		if i%5 == 0 {
+			for range 5 {
 				press(canvas, string(fyne.KeyBackspace))
 			}
 		}
-		typeText(canvas, string('1'+rune(i*7/4+i)%9))
+		typeText(canvas, strconv.Itoa(10_000 + i/5*7919%90_000)[i%5:][:1])
 	}
 	run("yes or no", "books", func(i int) { typeText(canvas, "ny"[i%2:i%2+1]) })
 	run("yes or no that asks another", "borrowed_before", func(i int) { typeText(canvas, "ny"[i%2:i%2+1]) })

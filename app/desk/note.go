@@ -63,7 +63,7 @@ func (r *noteRenderer) MinSize() fyne.Size {
 
 func (r *noteRenderer) Layout(size fyne.Size) {
 	height, textSize := lineHeight(theme.CaptionTextSize()), theme.CaptionTextSize()
-	if fyne.MeasureText(r.note.text, textSize, fyne.TextStyle{}).Width > size.Width*float32(r.note.lines) {
+	if len(breakLines(r.note.text, size.Width, textSize, fyne.TextStyle{})) > r.note.lines {
 		textSize = smallLabel
 	}
 	for i, line := range wrap(r.note.text, size.Width, textSize, fyne.TextStyle{}, r.note.lines) {

@@ -25,8 +25,8 @@ type panel struct {
 	mark     *mark
 	verdict  *canvas.Text
 	firmness *prose
-	odds     *prose       // PD in words, or its bounds
-	figures  *canvas.Text // PD, score, band
+	odds     *prose // PD in words, or its bounds
+	figures  *prose // PD, score, band
 	payment  *prose
 	decider  *prose
 	rules    *prose
@@ -43,7 +43,7 @@ func newPanel(reader *words.Reader, labels *words.Labels, e *model.Edition, caut
 	p := &panel{reader: reader, labels: labels, edition: e,
 		answered: figure(theme.TextSize(), false), mark: newMark(markSide), verdict: figure(theme.TextHeadingSize(), true),
 		firmness: newProse(theme.CaptionTextSize(), colorQuiet), odds: text(theme.ColorNameForeground),
-		figures: figure(theme.TextSize(), false), decider: text(theme.ColorNameForeground), payment: text(theme.ColorNameForeground),
+		figures: text(theme.ColorNameForeground), decider: text(theme.ColorNameForeground), payment: text(theme.ColorNameForeground),
 		rules: text(theme.ColorNameWarning), problem: text(theme.ColorNameError)}
 	p.below = []fyne.CanvasObject{p.firmness, p.odds, p.figures, widget.NewSeparator(), p.payment, p.decider, p.rules, p.problem}
 	p.body = container.New(p, append([]fyne.CanvasObject{p.answered, p.mark, p.verdict}, p.below...)...)
@@ -108,7 +108,7 @@ func (p *panel) show(iv *interview) {
 	}
 	p.firmness.say(p.firm(iv, settled))
 	p.odds.say(p.oddsWords(iv))
-	setFigure(p.figures, p.figureWords(iv), theme.ColorNameForeground)
+	p.figures.say(p.figureWords(iv))
 	p.decider.say(p.deciderWords(iv))
 	p.payment.say(p.paymentWords(iv))
 	p.rules.say(p.ruleWords(iv))
