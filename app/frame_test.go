@@ -23,9 +23,9 @@ import (
 	"weighhouse/app/desk"
 )
 
-// Times of real frames of the real window, on the display of the environment:
+// Frames of the real window, on the display of the environment:
 //
-//	xvfb-run -a -s "-screen 0 1366x768x24" go test -tags window,migrated_fynedo,no_animations -run '^$' -bench Frame -benchtime 200x ./app
+//	xvfb-run -a -s "-screen 0 1366x768x24" go test -tags window,migrated_fynedo,no_animations -bench . -benchtime 100x ./app
 
 var folder = flag.String("folder", "", "the folder of a practice branch (default: a new one)")
 
@@ -166,6 +166,26 @@ func processorTime() time.Duration {
 func median(frames []frame, part func(frame) time.Duration) float64 {
 	slices.SortFunc(frames, func(a, b frame) int { return int(part(a) - part(b)) })
 	return float64(part(frames[len(frames)/2])) / 1000
+}
+
+// With the focus in a box and nothing done, nothing is drawn.
+func TestRest(t *testing.T) {
+	s := onStage()
+	time.Sleep(time.Second)
+	fyne.DoAndWait(func() { s.probe.asked, s.probe.began = nil, make(chan struct{}) })
+	time.Sleep(3 * time.Second)
+	fyne.DoAndWait(func() {
+		if n := len(s.probe.asked) / askedInFrame; n > 0 {
+			t.Errorf("%d frames in three seconds of rest", n)
+		}
+		canvas.Refresh(s.probe.spot)
+	})
+	time.Sleep(time.Second)
+	fyne.DoAndWait(func() {
+		if n := len(s.probe.asked); n != askedInFrame {
+			t.Errorf("one frame asks %d times, not %d", n, askedInFrame)
+		}
+	})
 }
 
 // BenchmarkFrame sets the frame after a changed answer against a repaint of
